@@ -128,7 +128,7 @@ export async function recordRun(by: Client, specimenId: string, run: unknown, fi
 export async function fitEnded(by: Client, fitId: string, withinMs = 60_000): Promise<Fit> {
   const deadline = Date.now() + withinMs;
   for (;;) {
-    const { fit } = await by.get<{ fit: Fit }>(`/api/fits/${fitId}`);
+    const fit = await by.get<Fit>(`/api/fits/${fitId}`);
     if (fit.state === 'done' || fit.state === 'failed') return fit;
     if (Date.now() > deadline) throw new Error(`fit ${fitId} is still ${fit.state} at ${fit.progress}`);
     await new Promise((resolve) => setTimeout(resolve, 100));
