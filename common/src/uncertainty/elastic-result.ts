@@ -1,0 +1,130 @@
+/** The four constants as the contract states them: first order and Monte Carlo side by side, correlations and the whole budget. */
+import type { BudgetLine, ConstantResult, ElasticResult, Finding, MonteCarloCheck, PerConstant } from '../contract/result';
+import { CONSTANTS, type Basis, type ConstantName } from '../contract/vocabulary';
+import { finding } from '../findings/findings';
+import { covariance, coverageFactor, firstOrder, type FirstOrder } from './first-order';
+import type { Model, Term } from './model';
+import { numericalTolerance, propagateDistributions, type MonteCarlo, type Propagated } from './monte-carlo';
+
+export interface ElasticTerms {
+  readonly basis: Basis;
+  readonly constants: Readonly<Record<ConstantName, Term | null>>;
+  readonly origin: Readonly<Record<ConstantName, 'measured' | 'derived'>>;
+  readonly findings: readonly Finding[];
+  readonly seed: number;
+  readonly maximumTrials?: number;
+  readonly onProgress?: (fraction: number) => void;
+}
+
+interface Known {
+  readonly name: ConstantName;
+  readonly term: Term;
+  readonly first: FirstOrder;
+  readonly factor: number;
+}
+
+const finite = (value: number): number | null => (Number.isFinite(value) ? value : null);
+const perConstant = <T>(value: (name: ConstantName) => T): PerConstant<T> => ({ E: value('E'), nu: value('nu'), G: value('G'), K: value('K') });
+
+/**
+ * @throws RangeError when no constant is given, or one is not a finite number
+ */
+export function elasticResult(terms: ElasticTerms): ElasticResult {
+  const known = CONSTANTS.flatMap((name): Known[] => {
+    const term = terms.constants[name];
+    if (term === null) return [];
+    const first = firstOrder(term);
+    return [{ name, term, first, factor: coverageFactor(first.degreesOfFreedom) }];
+  });
+  if (known.length === 0 || known.some((k) => !Number.isFinite(k.first.value) || !Number.isFinite(k.first.standardUncertainty))) throw new RangeError('No finite constant');
+  // Shortest intervals are judged at one figure of u, the trials settled to a fifth of that (JCGM 101 8.2).
+  const tolerance = (k: Known) => (k.first.standardUncertainty > 0 ? numericalTolerance(k.first.standardUncertainty) : Number.MIN_VALUE);
+  const trials = propagateDistributions(known.map((k) => k.term), {
+    seed: terms.seed, maximumTrials: terms.maximumTrials, tolerances: known.map((k) => tolerance(k) / 5), onProgress: terms.onProgress,
+  });
+  const propagated = (name: ConstantName): Propagated | undefined => trials.outputs[known.findIndex((k) => k.name === name)];
+  const monteCarlo = comparison(known, trials, propagated, tolerance, terms.seed);
+  return {
+    basis: terms.basis,
+    constants: perConstant((name) => constantOf(known.find((k) => k.name === name), propagated(name), terms.origin[name])),
+    correlation: correlationMatrix(known),
+    budget: budgetOf(known),
+    monteCarlo,
+    findings: [...terms.findings, ...constantFindings(known, monteCarlo, trials)],
+  };
+}
+
+function constantOf(known: Known | undefined, propagated: Propagated | undefined, origin: 'measured' | 'derived'): ConstantResult | null {
+  if (known === undefined || propagated === undefined) return null;
+  const { first, factor, name } = known;
+  return {
+    value: first.value, standardUncertainty: first.standardUncertainty, expandedUncertainty: factor * first.standardUncertainty, coverageFactor: factor,
+    degreesOfFreedom: finite(first.degreesOfFreedom), interval: { low: propagated.low, high: propagated.high }, unit: name === 'nu' ? '1' : 'Pa', origin,
+  };
+}
+
+function comparison(known: readonly Known[], trials: MonteCarlo, propagated: (name: ConstantName) => Propagated | undefined, toleranceOf: (k: Known) => number, seed: number): MonteCarloCheck {
+  const compare = (name: ConstantName) => {
+    const k = known.find((one) => one.name === name);
+    const p = propagated(name);
+    if (k === undefined || p === undefined) return null;
+    const U = k.factor * k.first.standardUncertainty;
+    const [lowDifference, highDifference, tolerance] = [Math.abs(k.first.value - U - p.low), Math.abs(k.first.value + U - p.high), toleranceOf(k)];
+    return { lowDifference, highDifference, tolerance, agrees: lowDifference <= tolerance && highDifference <= tolerance };
+  };
+  const compared = perConstant(compare);
+  return { trials: trials.trials, seed, agrees: CONSTANTS.every((name) => compared[name]?.agrees ?? true), comparison: compared };
+}
+
+function correlationMatrix(known: readonly Known[]): (number | null)[][] {
+  return CONSTANTS.map((a) => CONSTANTS.map((b) => {
+    const x = known.find((k) => k.name === a);
+    const y = known.find((k) => k.name === b);
+    if (x === undefined || y === undefined) return null;
+    if (a === b) return 1;
+    const scale = x.first.standardUncertainty * y.first.standardUncertainty;
+    if (scale === 0) return 0;
+    return Math.min(1, Math.max(-1, covariance(x.term.model, x.first.sensitivities, y.first.sensitivities) / scale));
+  }));
+}
+
+function budgetOf(known: readonly Known[]): BudgetLine[] {
+  const model: Model | undefined = known[0]?.term.model;
+  if (model === undefined) return [];
+  return model.inputs.map((input, i) => {
+    const sensitivity = perConstant((name) => known.find((k) => k.name === name)?.first.sensitivities[i] ?? null);
+    const contribution = perConstant((name) => {
+      const k = known.find((one) => one.name === name);
+      const c = sensitivity[name];
+      if (k === undefined || c === null) return null;
+      return k.first.standardUncertainty > 0 ? (100 * (c * input.standardUncertainty) ** 2) / k.first.standardUncertainty ** 2 : 0;
+    });
+    return {
+      input: input.key, label: input.label, value: input.value, unit: input.unit, standardUncertainty: input.standardUncertainty, type: input.type,
+      distribution: input.distribution, degreesOfFreedom: finite(input.degreesOfFreedom), source: input.source, sensitivity, contribution,
+    };
+  });
+}
+
+function constantFindings(known: readonly Known[], check: MonteCarloCheck, trials: MonteCarlo): Finding[] {
+  const found: Finding[] = [];
+  for (const { name, first } of known) {
+    if (name === 'nu') found.push(...nuFindings(first));
+    else if (!(first.value > 0)) found.push(finding('MODULUS_NOT_POSITIVE', name, `${name} = ${(first.value / 1e9).toPrecision(3)} GPa`));
+  }
+  for (const name of CONSTANTS) {
+    const c = check.comparison[name];
+    if (c !== null && !c.agrees) found.push(finding('MONTE_CARLO_DISAGREES', name, `The ends of the 95 % intervals of ${name} differ by ${c.lowDifference.toPrecision(2)} and ${c.highDifference.toPrecision(2)}, more than ${c.tolerance.toPrecision(2)}`));
+  }
+  if (!trials.stable) found.push(finding('MONTE_CARLO_UNSTABLE', 'Monte Carlo', `${trials.trials.toLocaleString('en-GB')} trials`));
+  return found;
+}
+
+function nuFindings(first: FirstOrder): Finding[] {
+  const nu = first.value;
+  if (!(nu > -1 && nu < 0.5)) return [finding('NU_OUTSIDE_RANGE', 'nu', `ν = ${nu.toFixed(4)}`)];
+  // Zero within its own uncertainty is not auxetic.
+  if (nu + 2 * first.standardUncertainty < 0) return [finding('NU_NEGATIVE', 'nu', `ν = ${nu.toFixed(4)}`)];
+  const amplification = (2 * first.standardUncertainty) / (1 - 2 * nu);
+  return amplification > 0.2 ? [finding('NU_ILL_CONDITIONED', 'nu', `ν = ${nu.toFixed(4)}: K is uncertain by ${(100 * amplification).toFixed(0)} % through ν alone`)] : [];
+}
