@@ -1,0 +1,78 @@
+import { mkdirSync } from 'node:fs';
+import { join } from 'node:path';
+import type { PGlite } from '@electric-sql/pglite';
+import { Logger } from '@nestjs/common';
+import type { Config } from '../platform/config';
+import { DataLock } from './data-lock';
+import { Database, insideTransaction } from './database';
+import { migrate } from './migrate';
+import { PglitePool, type PgPool } from './pool';
+
+/** Ours first: BullMQ's SQL is unqualified, and none of our tables is called as one of its own (a test says so). */
+export const SEARCH_PATH = 'public, bullmq';
+
+/** Opens the database that the settings name, brings its schema up to date, and answers with it. */
+export async function openDatabase(config: Config): Promise<Database> {
+  return config.databaseUrl === undefined ? openFolder(config.dataFolder) : openServer(config.databaseUrl);
+}
+
+async function openFolder(dataFolder: string): Promise<Database> {
+  mkdirSync(dataFolder, { recursive: true, mode: 0o700 });
+  const lock = DataLock.acquire(dataFolder);
+  try {
+    const { PGlite } = await import('@electric-sql/pglite');
+    const pglite = await PGlite.create({ dataDir: join(dataFolder, 'database') });
+    const database = await embedded(pglite, () => lock.release());
+    await migrate(database);
+    return database;
+  } catch (error) {
+    lock.release();
+    throw error;
+  }
+}
+
+/** A database over a PGlite that is open already. */
+export async function embedded(pglite: PGlite, afterClose: () => void = () => {}): Promise<Database> {
+  const { drizzle } = await import('drizzle-orm/pglite');
+  await pglite.exec(`set search_path to ${SEARCH_PATH}; set timezone to 'UTC'`);
+  refuseDuringTransactions(pglite);
+  return new Database('embedded', drizzle(pglite), new PglitePool(pglite), async () => {
+    if (!pglite.closed) await pglite.close();
+    afterClose();
+  });
+}
+
+/** A statement beside the open transaction would wait for it while it waits for the statement: an error tells the programmer instead. */
+function refuseDuringTransactions(pglite: PGlite): void {
+  const query = pglite.query.bind(pglite);
+  const exec = pglite.exec.bind(pglite);
+  const check = () => {
+    if (insideTransaction()) throw new Error('Inside a transaction, use its `tx` for every statement');
+  };
+  pglite.query = async (...args) => {
+    check();
+    return query(...args);
+  };
+  pglite.exec = async (...args) => {
+    check();
+    return exec(...args);
+  };
+}
+
+export async function openServer(url: string): Promise<Database> {
+  const { Pool } = await import('pg');
+  const { drizzle } = await import('drizzle-orm/node-postgres');
+  const logger = new Logger('Database');
+  const pool = new Pool({ connectionString: url, max: 16, keepAlive: true, options: `-c search_path=${SEARCH_PATH.replace(' ', '')} -c timezone=UTC` });
+  pool.on('error', (error) => logger.warn(`A database connection was lost: ${error.message}`));
+  const database = new Database('server', drizzle(pool), pool satisfies PgPool, async () => {
+    if (!pool.ended) await pool.end();
+  });
+  try {
+    await migrate(database);
+    return database;
+  } catch (error) {
+    await database.close();
+    throw error;
+  }
+}
