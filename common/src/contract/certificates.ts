@@ -27,7 +27,8 @@ export const certificateSnapshot = z.object({
   /** Of the issue that this one replaces. */
   replaces: z.object({ number: z.string(), issue: z.number().int(), releasedAt: instant, reason: z.string() }).nullable(),
   title: z.string(),
-  laboratory: z.object({ name: z.string(), address: z.string(), separationOfDuties: z.boolean() }),
+  /** Days and times are printed in its time zone. */
+  laboratory: z.object({ name: z.string(), address: z.string(), timeZone: z.string(), separationOfDuties: z.boolean() }),
   customer: z.object({ name: z.string(), address: z.string() }),
   order: z.object({ number: z.string(), customerReference: z.string(), materialDescription: z.string() }),
   issuedAt: instant,
