@@ -152,7 +152,8 @@ export const stressStrainDetail = z.object({
   toeStrain: z.number(),
   /** Bending of two opposed axial gauges at the window's top, percent; null with one gauge. */
   bending: z.number().nullable(),
-  area: quantity,
+  /** Cross-section from the readings; null where the file gives stress and the cross-section was not measured. */
+  area: quantity.nullable(),
   compressive: z.boolean(),
   /** Drawn points, thinned: axial strain against stress over the whole record, and residual stress in the window. */
   curve: z.array(point),
