@@ -1,3 +1,4 @@
+import { availableParallelism } from 'node:os';
 import { join, resolve } from 'node:path';
 import { z } from 'zod';
 
@@ -15,7 +16,7 @@ const environment = z.object({
   STRAINWRIGHT_TIME_ZONE: text.default('UTC'),
   STRAINWRIGHT_LOG: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('info'),
   /** Fits computed at once in this process. */
-  STRAINWRIGHT_FITS_AT_ONCE: z.coerce.number().int().min(1).max(64).default(1),
+  STRAINWRIGHT_FITS_AT_ONCE: z.coerce.number().int().min(1).max(64).default(Math.min(4, Math.max(1, availableParallelism() - 1))),
   /** Number of reverse proxies in front, whose X-Forwarded-For may be believed. */
   STRAINWRIGHT_PROXIES: z.coerce.number().int().min(0).max(10).default(0),
   DATABASE_URL: text.optional(),

@@ -1,7 +1,8 @@
 import { date, index, integer, jsonb, pgTable, text, uniqueIndex, uuid } from 'drizzle-orm/pg-core';
-import type { Limit } from '@strainwright/common/contract/orders';
+import type { Limit, moistureState } from '@strainwright/common/contract/orders';
 import type { OrderState } from '@strainwright/common/contract/states';
 import type { ConstantName, MaterialClass, RunKind, Shape } from '@strainwright/common/contract/vocabulary';
+import type { z } from 'zod';
 import { id, instant, version } from './columns';
 import { customers, people } from './people';
 
@@ -44,7 +45,7 @@ export const specimens = pgTable('specimens', {
   mark: text('mark').notNull(),
   shape: text('shape').notNull().$type<Shape>(),
   orientation: text('orientation').notNull(),
-  moisture: text('moisture').notNull(),
+  moisture: text('moisture').notNull().$type<z.infer<typeof moistureState>>(),
   notes: text('notes').notNull(),
   createdAt: instant('created_at').notNull(),
   version: version(),

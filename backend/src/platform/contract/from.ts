@@ -18,7 +18,12 @@ class ContractPipe implements PipeTransform {
  * @throws Problem 422 with the path of every field at fault, 400 when there is no object at all or a query is wrong
  */
 export function parseContract<T>(schema: z.ZodType<T>, value: unknown, where: 'body' | 'query' = 'body'): T {
-  if (where === 'body' && (value === undefined || value === null)) throw new Problem(400, 'body.missing', 'The request needs a JSON body.');
+  if (where === 'body' && (value === undefined || value === null)) {
+    // An action whose fields may all be left out needs no body.
+    const without = schema.safeParse({});
+    if (without.success) return without.data;
+    throw new Problem(400, 'body.missing', 'The request needs a JSON body.');
+  }
   const unreadable = unreadableText(value, '');
   if (unreadable !== undefined) throw invalidFields([unreadable]);
   const parsed = schema.safeParse(value);

@@ -1,10 +1,10 @@
 import { randomUUID } from 'node:crypto';
 import { mkdirSync } from 'node:fs';
-import { diskStorage, type Options } from 'multer';
+import { diskStorage } from 'multer';
 import { LARGEST_FILE } from './storage';
 
 /** Limits and place of multipart uploads: streamed to `incoming`, never held in memory. File names arrive as UTF-8. */
-export function uploadOptions(incoming: string): Options {
+export function uploadOptions(incoming: string) {
   return {
     storage: diskStorage({
       destination: (_request, _file, done) => {

@@ -1,0 +1,33 @@
+import type { AddressInfo } from 'node:net';
+import type { NestExpressApplication } from '@nestjs/platform-express';
+import { createApplication } from './application';
+import { openDatabase } from './database/open';
+import { fitWorker } from './fits/fit-worker';
+import type { Config } from './platform/config';
+
+export interface Server {
+  app: NestExpressApplication;
+  port: number;
+  close(): Promise<void>;
+}
+
+/** Opens the database, brings it up to date and listens. Closing ends open requests, puts running fits back, and closes the database last. */
+export async function startServer(config: Config): Promise<Server> {
+  const database = await openDatabase(config);
+  try {
+    const app = await createApplication(config, database, database.kind === 'embedded' ? fitWorker() : undefined);
+    const http = await app.listen(config.port, config.host);
+    const { port } = http.address() as AddressInfo;
+    return {
+      app, port,
+      close: async () => {
+        http.closeAllConnections();
+        await app.close();
+        await database.close();
+      },
+    };
+  } catch (error) {
+    await database.close();
+    throw error;
+  }
+}
