@@ -20,6 +20,8 @@ export const conformityStatement = z.object({
   conforms: z.boolean(), probability: z.number(), statement: z.string(),
 });
 
+const certificateMethod = z.object({ code: z.string(), versionNumber: z.number().int(), name: z.string(), standard: z.string(), kind: runKind });
+
 /** The one content of PDF, XLSX and JSON; its RFC 8785 form is what is hashed and signed. */
 export const certificateSnapshot = z.object({
   schema: z.literal('strainwright-certificate-1'),
@@ -41,15 +43,18 @@ export const certificateSnapshot = z.object({
   })),
   results: z.array(z.object({
     specimenMark: z.string(), basis, result: elasticResult,
-    method: z.object({ code: z.string(), versionNumber: z.number().int(), name: z.string(), standard: z.string(), kind: runKind }),
+    /** Of its first run. */
+    method: certificateMethod,
     runs: z.array(z.object({
-      number: z.number().int(), kind: runKind, performedAt: instant, performedBy: z.string(), temperature: z.number().nullable(), humidity: z.number().nullable(), notes: z.string(),
+      number: z.number().int(), kind: runKind, methodCode: z.string(), methodVersion: z.number().int(), performedAt: instant, performedBy: z.string(), temperature: z.number().nullable(), humidity: z.number().nullable(), notes: z.string(),
       settings: z.string(), softwareVersion: z.string(),
       files: z.array(z.object({ name: z.string(), sha256: z.string(), size: z.number().int() })),
     })),
     analysedBy: z.string(), reviewedBy: z.string(), reviewedAt: instant,
     acknowledgements: z.array(z.object({ code: z.string(), subject: z.string(), reason: z.string() })),
   })),
+  /** Every method version that a run followed, once. */
+  methods: z.array(certificateMethod),
   instruments: z.array(z.object({ name: z.string(), kind: z.string(), serial: z.string(), certificate: z.string(), calibratedOn: day.nullable(), dueOn: day.nullable(), inCalibration: z.boolean() })),
   conformity: z.array(conformityStatement),
   deviations: z.string(),
@@ -89,4 +94,5 @@ export const verification = z.object({
   explanation: z.string(),
 });
 export type Verification = z.infer<typeof verification>;
-export const verifyQuery = z.strictObject({ code: z.string().min(1, 'Type the code').max(40) });
+/** Each issue has its own code; `issue` only narrows. */
+export const verifyQuery = z.strictObject({ code: z.string().min(1, 'Type the code').max(40), issue: z.coerce.number().int().positive().optional() });

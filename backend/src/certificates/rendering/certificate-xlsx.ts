@@ -38,7 +38,7 @@ function facts(s: CertificateSnapshot): (readonly [string, Cell])[] {
     ['Laboratory', s.laboratory.name], ['Address', s.laboratory.address], ['Time zone of dates', timeZone], ['Customer', s.customer.name], ['Customer’s address', s.customer.address], ['Order', s.order.number],
     ['Customer’s reference (supplied by the customer)', s.order.customerReference], ['Material (supplied by the customer)', s.order.materialDescription], ['Tested', daysOfActivity(s)],
     ...s.specimens.map((p) => [`Specimen ${p.mark}`, `${p.material}; ${p.shape}; received ${p.receivedOn}; ${p.dimensions.map(dimensionText).join('; ')}`] as const),
-    ...distinct(s.results.map(({ method: m }) => `${m.code} version ${m.versionNumber}: ${m.name}. ${m.standard}`)).map((text) => ['Method', text] as const),
+    ...s.methods.map((m) => ['Method', `${m.code} version ${m.versionNumber}: ${m.name}. ${m.standard}`] as const),
     ['Deviations from the methods', s.deviations === '' ? 'None.' : s.deviations],
     ...s.conformity.map((c) => [`Conformity ${c.specimenMark} ${SYMBOLS[c.constant]} ${c.basis}`, `${c.conforms ? 'Conforms' : 'Does not conform'} (${c.rule}; probability ${c.probability.toFixed(3)}). ${c.statement}`] as const),
     ['Reviewed by', distinct(s.results.map((r) => r.reviewedBy)).join(', ')], ['Released by', s.releasedBy],

@@ -45,15 +45,17 @@ function specimen(mark: string, material: string): CertificateSpecimen {
   };
 }
 
+const PULSE_METHOD = { code: 'CB-UP-1', versionNumber: 3, name: 'Pulse velocities through a specimen', standard: 'Settings after ASTM E494', kind: 'pulse' as const };
+const LOAD_METHOD = { code: 'CB-SS-2', versionNumber: 1, name: 'Modulus from load and strain', standard: 'Settings after ASTM E111', kind: 'stress-strain' as const };
+
 function result(mark: string, basis: 'static' | 'dynamic', run: number): CertificateResult {
   const pulse = basis === 'dynamic';
+  const method = pulse ? PULSE_METHOD : LOAD_METHOD;
   return {
     specimenMark: mark, basis, result: exampleResult(basis),
-    method: pulse
-      ? { code: 'CB-UP-1', versionNumber: 3, name: 'Pulse velocities through a specimen', standard: 'Settings after ASTM E494', kind: 'pulse' }
-      : { code: 'CB-SS-2', versionNumber: 1, name: 'Modulus from load and strain', standard: 'Settings after ASTM E111', kind: 'stress-strain' },
+    method,
     runs: [{
-      number: run, kind: pulse ? 'pulse' : 'stress-strain', performedAt: '2026-02-20T23:30:00.000Z', performedBy: 'Tamsin Oake', temperature: 22.5, humidity: 41, notes: '',
+      number: run, kind: method.kind, methodCode: method.code, methodVersion: method.versionNumber, performedAt: '2026-02-20T23:30:00.000Z', performedBy: 'Tamsin Oake', temperature: 22.5, humidity: 41, notes: '',
       settings: pulse ? 'picker AIC' : 'region automatic', softwareVersion: '0.1.0',
       files: [{ name: `${mark}-run${run}.csv`, sha256: 'c'.repeat(64), size: 48_112 }],
     }],
@@ -71,6 +73,7 @@ export function exampleSnapshot(marks: readonly string[] = ['S1-01'], material =
     issuedAt: '2026-02-25T14:05:00.000Z', releasedBy: 'Odile Brandt',
     specimens: marks.map((mark) => specimen(mark, material)),
     results: marks.flatMap((mark) => [result(mark, 'dynamic', 1), result(mark, 'static', 2)]),
+    methods: [PULSE_METHOD, LOAD_METHOD],
     instruments: [
       { name: 'Micrometer M-3', kind: 'micrometer', serial: '88121', certificate: 'CAL-2025-117', calibratedOn: '2025-11-03', dueOn: '2026-11-03', inCalibration: true },
       { name: 'Balance B-1', kind: 'balance', serial: 'B1-0042', certificate: 'CAL-2025-031', calibratedOn: '2025-01-20', dueOn: '2026-01-20', inCalibration: false },

@@ -7,12 +7,11 @@ import { heading, QUIET, ruledTable, STOP } from './style';
 type Run = CertificateResult['runs'][number];
 
 export function testing(snapshot: CertificateSnapshot): Content[] {
-  return [heading('Methods'), ...methods(snapshot.results), heading('Tests and conditions'), runs(snapshot), heading('Instruments'), ...instruments(snapshot)];
+  return [heading('Methods'), ...methods(snapshot), heading('Tests and conditions'), runs(snapshot), heading('Instruments'), ...instruments(snapshot)];
 }
 
-function methods(results: readonly CertificateResult[]): Content[] {
-  const byVersion = new Map(results.map(({ method }) => [`${method.code} ${method.versionNumber}`, method]));
-  return [...byVersion.values()].map((m) => ({
+function methods(snapshot: CertificateSnapshot): Content[] {
+  return snapshot.methods.map((m) => ({
     fontSize: 8.5, margin: [0, 1, 0, 2],
     text: [{ text: `${m.code} version ${m.versionNumber}`, font: 'RobotoMono', fontSize: 8 }, `  ${m.name} (${KIND_NAMES[m.kind]} method). `, { text: m.standard, color: QUIET }],
   }));
@@ -29,9 +28,10 @@ export function conditionsText(run: Run): string {
 
 function runs(snapshot: CertificateSnapshot): Content {
   return ruledTable(
-    [{ head: 'Specimen, run', width: 82 }, { head: 'Tested', width: 80 }, { head: 'By', width: 76 }, { head: 'Conditions', width: '*' }, { head: 'Settings of the evaluation', width: '*' }],
+    [{ head: 'Specimen, run', width: 82 }, { head: 'Method', width: 58 }, { head: 'Tested', width: 74 }, { head: 'By', width: 62 }, { head: 'Conditions', width: '*' }, { head: 'Settings of the evaluation', width: '*' }],
     snapshot.results.flatMap((r) => r.runs.map((run) => [
       { text: `${r.specimenMark}, ${run.number}`, style: 'number' },
+      { text: `${run.methodCode} v${run.methodVersion}`, style: 'number', fontSize: 7.2 },
       { text: momentOf(run.performedAt, snapshot.laboratory.timeZone), style: 'number', fontSize: 7.2 },
       run.performedBy, conditionsText(run), `${run.settings}; software ${run.softwareVersion}`,
     ])),
