@@ -9,6 +9,8 @@ import helmet from 'helmet';
 import { Logger } from 'nestjs-pino';
 import { AppModule } from './app.module';
 import type { Database } from './database/database';
+import { ApiDocument } from './docs/api-document';
+import { bodyErrors } from './platform/body-errors';
 import { Clock } from './platform/clock';
 import type { Config } from './platform/config';
 import { declaredRoutes } from './platform/contract/declared-actions';
@@ -34,6 +36,7 @@ export async function prepare(app: NestExpressApplication, config: Config): Prom
   app.use(securityHeaders(config));
   app.use(cookieParser());
   app.useBodyParser('json', { limit: '1mb', strict: true });
+  app.use(bodyErrors);
   app.use('/api', (_request: Request, response: Response, next: NextFunction) => {
     response.setHeader('Cache-Control', 'no-store');
     next();
@@ -42,6 +45,7 @@ export async function prepare(app: NestExpressApplication, config: Config): Prom
   await app.get(Storage).prepare(app.get(Clock).now());
   await app.init();
   declaredRoutes(app);
+  app.get(ApiDocument, { strict: false }).describe(app);
   return app;
 }
 

@@ -1,6 +1,8 @@
 import type { MessagePort } from 'node:worker_threads';
 import type { Finding, FitResult } from '@strainwright/common/contract/result';
 import type { FilePurpose, FitSettings, Layout, RunRecord } from '@strainwright/common/contract/runs';
+import type { InstrumentState } from '@strainwright/common/specimens/instrument-state';
+import type { ReadingState } from '@strainwright/common/specimens/measure-specimen';
 import type { MaterialClass, RunKind, Shape } from '@strainwright/common/contract/vocabulary';
 
 /** A raw file as the worker thread reads it. */
@@ -20,9 +22,16 @@ export interface FitJob {
   record: RunRecord;
   shape: Shape;
   materialClass: MaterialClass;
-  /** What else the computation of this kind needs: readings, instruments with their calibrations, method; by name. */
-  inputs: Record<string, unknown>;
+  /** ISO instant. */
+  performedAt: string;
+  readings: ReadingState[];
+  /** As calibrated on the day of the run. */
+  instruments: Record<'time' | 'force' | 'axial' | 'transverse', InstrumentState | null>;
+  /** Found before the computation: an unconfirmed layout, a reference check out of limits. */
+  findings: Finding[];
   files: FitFile[];
+  /** Where parsed columns are kept. Not part of the inputs' hash. */
+  cacheFolder: string;
 }
 
 /** What the worker thread is handed; it posts numbers from 0 to 1 to `progress`. */

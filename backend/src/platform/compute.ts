@@ -16,7 +16,7 @@ export class ComputeStopped extends Error {
 /** Runs computations in worker threads, so that the event loop never waits for one. */
 @Injectable()
 export class Compute implements OnApplicationShutdown {
-  private pool: Piscina | undefined;
+  private pool: Promise<Piscina> | undefined;
   private readonly stopping = new AbortController();
 
   constructor(private readonly config: Config) {}
@@ -28,7 +28,8 @@ export class Compute implements OnApplicationShutdown {
    */
   async run<Result>(file: string, job: unknown, onProgress: (fraction: number) => void, timeout: number): Promise<Result> {
     if (this.stopping.signal.aborted) throw new ComputeStopped();
-    const pool = this.open();
+    this.pool ??= this.open();
+    const pool = await this.pool;
     const { port1, port2 } = new MessageChannel();
     port1.on('message', (fraction: unknown) => {
       if (typeof fraction === 'number') onProgress(Math.min(1, Math.max(0, fraction)));
@@ -53,17 +54,14 @@ export class Compute implements OnApplicationShutdown {
 
   async onApplicationShutdown(): Promise<void> {
     this.stop();
-    await this.pool?.destroy();
+    await (await this.pool)?.destroy();
   }
 
-  private open(): Piscina {
-    if (this.pool === undefined) {
-      const { Piscina: Pool } = require('piscina') as typeof import('piscina');
-      this.pool = new Pool({
-        minThreads: 0, maxThreads: this.config.fitsAtOnce, idleTimeout: 30_000, concurrentTasksPerWorker: 1,
-        execArgv: [...this.config.taskArguments], resourceLimits: { maxOldGenerationSizeMb: LARGEST_HEAP },
-      });
-    }
-    return this.pool;
+  private async open(): Promise<Piscina> {
+    const { Piscina: Pool } = await import('piscina');
+    return new Pool({
+      minThreads: 0, maxThreads: this.config.fitsAtOnce, idleTimeout: 30_000, concurrentTasksPerWorker: 1,
+      execArgv: [...this.config.taskArguments], resourceLimits: { maxOldGenerationSizeMb: LARGEST_HEAP },
+    });
   }
 }

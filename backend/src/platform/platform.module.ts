@@ -14,7 +14,7 @@ import { Storage } from './storage/storage';
 export class PlatformModule {
   /** The database is opened before, and closed after, everything that may still use it. */
   static with(config: Config, database: Database): DynamicModule {
-    const provided = [{ provide: Config, useValue: config }, { provide: Database, useValue: database }, Clock, Secrets, Storage, Mail, RedisConnections];
+    const provided = [{ provide: Config, useValue: config }, { provide: Database, useValue: database }, Clock, Secrets, Storage, Mail, { provide: RedisConnections, inject: [Config], useFactory: (settings: Config) => RedisConnections.open(settings) }];
     return { module: PlatformModule, imports: [loggingModule], providers: provided, exports: provided };
   }
 }

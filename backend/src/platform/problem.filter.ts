@@ -20,16 +20,8 @@ export class ProblemFilter implements ExceptionFilter {
   }
 }
 
-/** Express and its body parsers throw errors with `status` and `type`. */
-interface HttpLike { status: number; type?: string }
-const isHttpLike = (e: unknown): e is HttpLike => typeof e === 'object' && e !== null && typeof (e as { status?: unknown }).status === 'number';
-
-const BODY_ERRORS: Readonly<Record<string, [string, string]>> = {
-  'entity.too.large': ['body.too-large', 'The request is larger than 1 MB.'],
-  'entity.parse.failed': ['body.not-json', 'The body is not valid JSON.'],
-  'encoding.unsupported': ['body.encoding', 'The body is compressed in a way that is not supported.'],
-  'charset.unsupported': ['body.charset', 'The body must be UTF-8.'],
-};
+/** Express throws errors with `status`. */
+const hasStatus = (e: unknown): e is { status: number } => typeof e === 'object' && e !== null && typeof (e as { status?: unknown }).status === 'number';
 
 const CODES: Readonly<Record<number, string>> = {
   400: 'request.malformed', 401: 'session.missing', 403: 'action.forbidden', 404: 'route.not-found', 405: 'route.method', 413: 'body.too-large', 415: 'body.content-type', 429: 'request.too-many', 503: 'server.not-ready',
@@ -38,12 +30,7 @@ const CODES: Readonly<Record<number, string>> = {
 function asProblem(thrown: unknown): Problem {
   if (thrown instanceof Problem) return thrown;
   if (thrown instanceof MulterError) return fromUpload(thrown);
-  const cause = thrown instanceof HttpException ? thrown.cause : thrown;
-  if (isHttpLike(cause) && cause.type !== undefined) {
-    const known = BODY_ERRORS[cause.type];
-    if (known !== undefined) return new Problem(cause.status, known[0], known[1]);
-  }
-  const status = thrown instanceof HttpException ? thrown.getStatus() : isHttpLike(thrown) ? thrown.status : 500;
+  const status = thrown instanceof HttpException ? thrown.getStatus() : hasStatus(thrown) ? thrown.status : 500;
   if (status >= 400 && status < 500) return new Problem(status, CODES[status] ?? 'request.refused', status === 404 ? 'There is nothing at this address.' : (thrown as Error).message);
   return new Problem(500, 'server.error', 'The server could not do this. Nothing was stored. Try again; if it stays, tell the administrator.');
 }

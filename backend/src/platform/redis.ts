@@ -1,18 +1,19 @@
-import { Injectable, OnApplicationShutdown } from '@nestjs/common';
+import type { OnApplicationShutdown } from '@nestjs/common';
 import type { Redis } from 'ioredis';
-import { Config } from './config';
+import type { Config } from './config';
 
 /** Counters and the fan-out of events. Without REDIS_URL they live in this process. */
-@Injectable()
 export class RedisConnections implements OnApplicationShutdown {
-  /** For commands. */
-  readonly commands: Redis;
-  /** For subscriptions, which take a connection of their own. */
-  readonly subscriber: Redis;
+  private constructor(
+    /** For commands. */
+    readonly commands: Redis,
+    /** For subscriptions, which take a connection of their own. */
+    readonly subscriber: Redis,
+  ) {}
 
-  constructor(config: Config) {
-    this.commands = connect(config.redisUrl);
-    this.subscriber = this.commands.duplicate();
+  static async open(config: Config): Promise<RedisConnections> {
+    const commands = config.redisUrl === undefined ? await inProcess() : await connect(config.redisUrl);
+    return new RedisConnections(commands, commands.duplicate());
   }
 
   onApplicationShutdown(): void {
@@ -21,16 +22,17 @@ export class RedisConnections implements OnApplicationShutdown {
   }
 }
 
-let inProcess = 0;
+/* Each of the two packages is loaded only where it is used. */
+async function connect(url: string): Promise<Redis> {
+  const { Redis: Client } = await import('ioredis');
+  return new Client(url, { maxRetriesPerRequest: 3 });
+}
 
-/* The two packages are loaded as they are needed: one of them never is. */
-function connect(url: string | undefined): Redis {
-  if (url !== undefined) {
-    const { Redis: Client } = require('ioredis') as typeof import('ioredis');
-    return new Client(url, { maxRetriesPerRequest: 3 });
-  }
-  const Mock = require('ioredis-mock') as typeof import('ioredis-mock');
-  inProcess += 1;
+let made = 0;
+
+async function inProcess(): Promise<Redis> {
+  const { default: Mock } = await import('ioredis-mock');
+  made += 1;
   // Mocks of the same port share their data: each application gets its own.
-  return new Mock({ host: 'in-process', port: inProcess });
+  return new Mock({ host: 'in-process', port: made });
 }

@@ -1,5 +1,6 @@
-import { Body, Param, ParseUUIDPipe, PipeTransform, Query } from '@nestjs/common';
+import { Body, Param, PipeTransform, Query } from '@nestjs/common';
 import { ApiBody, ApiParam, ApiQuery, ApiResponse } from '@nestjs/swagger';
+import { id } from '@strainwright/common/contract/wire';
 import { z } from 'zod';
 import { FieldError, invalidFields, notFound, Problem } from '../problem';
 import { openApiSchema } from './open-api';
@@ -10,6 +11,16 @@ class ContractPipe implements PipeTransform {
 
   transform(value: unknown): unknown {
     return parseContract(this.schema, value, this.where);
+  }
+}
+
+class IdPipe implements PipeTransform {
+  constructor(private readonly noun: string) {}
+
+  transform(value: unknown): string {
+    const parsed = id.safeParse(value);
+    if (!parsed.success) throw notFound(this.noun);
+    return parsed.data;
   }
 }
 
@@ -72,7 +83,7 @@ export function FromQuery(schema: z.ZodObject): ParameterDecorator {
 /** An id in the path; anything else than a UUID is answered with 404, as nothing can be there. */
 export function FromId(noun: string, name = 'id'): ParameterDecorator {
   return (target, key, index) => {
-    Param(name, new ParseUUIDPipe({ exceptionFactory: () => notFound(noun) }))(target, key, index);
+    Param(name, new IdPipe(noun))(target, key, index);
     describe(target, key, ApiParam({ name, schema: { type: 'string', format: 'uuid' } }));
   };
 }
