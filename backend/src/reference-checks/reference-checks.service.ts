@@ -14,7 +14,7 @@ import { newId } from '../platform/ids';
 import { invalid, notFound, Problem } from '../platform/problem';
 import { RecordService } from '../record/record.service';
 import type { Caller } from '../session/caller';
-import { pieceAnswer } from './reference-state';
+import { pieceAnswer } from './reference-piece';
 
 type PieceRow = typeof referencePieces.$inferSelect & { instrumentName: string };
 

@@ -1,3 +1,4 @@
+import { isSatisfactory } from '@strainwright/common/statistics/normalized-error';
 import { asc, desc, eq, sql } from 'drizzle-orm';
 import type { Queries } from '../database/database';
 import { certificates } from '../database/schema/certificates';
@@ -5,8 +6,7 @@ import { determinations } from '../database/schema/determinations';
 import { calibrations, instruments, referenceChecks, referencePieces } from '../database/schema/instruments';
 import { orders, samples, specimens } from '../database/schema/orders';
 import { daysAfter, DUE_SOON_DAYS } from '../instruments/calibration-state';
-import { enOf } from '../reference-checks/reference-state';
-import { isSatisfactory } from '@strainwright/common/statistics/normalized-error';
+import { enOf } from '../reference-checks/reference-piece';
 import { MOST, type WorkItem } from './work-item';
 
 /** Orders with accepted determinations that stand on no certificate, drafts included. */
