@@ -15,6 +15,9 @@ import { ReferenceChecksModule } from './reference-checks/reference-checks.modul
 import { SamplesModule } from './samples/samples.module';
 import { SessionModule } from './session/session.module';
 import { SpecimensModule } from './specimens/specimens.module';
+import { RunsModule } from './runs/runs.module';
+import { FitsModule } from './fits/fits.module';
+import { DeterminationsModule } from './determinations/determinations.module';
 import { WorklistModule } from './worklist/worklist.module';
 
 /** One module a noun of the product. */
@@ -34,6 +37,9 @@ export const FEATURES: Type[] = [
   InstrumentsModule,
   MethodsModule,
   ReferenceChecksModule,
+  RunsModule,
+  FitsModule,
+  DeterminationsModule,
   FindModule,
   WorklistModule,
 ];

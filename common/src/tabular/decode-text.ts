@@ -7,7 +7,10 @@ export function detectEncoding(head: Uint8Array): Encoding {
   if (head[0] === 0xfe && head[1] === 0xff) return 'utf-16be';
   let evenZeros = 0;
   let oddZeros = 0;
-  for (let i = 0; i < head.length; i += 1) if (head[i] === 0) i % 2 === 0 ? (evenZeros += 1) : (oddZeros += 1);
+  for (let i = 0; i < head.length; i += 1) {
+    if (head[i] === 0 && i % 2 === 0) evenZeros += 1;
+    else if (head[i] === 0) oddZeros += 1;
+  }
   if (oddZeros > head.length / 5 && evenZeros < head.length / 50) return 'utf-16le';
   if (evenZeros > head.length / 5 && oddZeros < head.length / 50) return 'utf-16be';
   return isUtf8(head) ? 'utf-8' : 'windows-1252';
