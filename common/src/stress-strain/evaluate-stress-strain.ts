@@ -4,7 +4,7 @@
  */
 import type { Finding, FitResult, StressStrainDetail } from '../contract/result';
 import type { StressStrainRecord, StressStrainSettings } from '../contract/runs';
-import { DIMENSIONS_OF_SHAPE, type MaterialClass, type Shape } from '../contract/vocabulary';
+import { DIMENSIONS_OF_SHAPE, type ConstantName, type MaterialClass, type Shape } from '../contract/vocabulary';
 import { EvaluationRefused } from '../findings/evaluation-refused';
 import { finding, type FindingCode } from '../findings/findings';
 import { calibrationFindings, rangeFindings, type InstrumentState } from '../specimens/instrument-state';
@@ -55,9 +55,9 @@ function branchOf({ stress, axial }: RecordChannels): LoadingBranch {
   stress.forEach((value, i) => {
     if (Math.abs(value - stress[0]!) > Math.abs(stress[furthest]! - stress[0]!)) furthest = i;
   });
+  if (furthest === 0) return refuse('STRAIN_CONSTANT', 'stress', `Stress is ${stress[0]!.toPrecision(4)} Pa in all ${stress.length} rows`);
   const loading = momentsOf(axial.mean, stress, 0, furthest + 1);
-  if (!(loading.syy > 0)) return refuse('STRAIN_CONSTANT', 'stress', `Stress is ${stress[0]!.toPrecision(4)} Pa in all ${stress.length} rows`);
-  if (!(loading.sxx > 0)) return refuse('STRAIN_CONSTANT', 'axial', `Axial strain is ${axial.mean[0]!.toPrecision(4)} in all rows while the stress changes`);
+  if (axial.mean.every((v) => v === axial.mean[0])) return refuse('STRAIN_CONSTANT', 'axial', `Axial strain is ${axial.mean[0]!.toPrecision(4)} in all rows while the stress changes`);
   if (slopeOf(loading) < 0) return refuse('SIGN_REVERSED', 'axial', `Stress over axial strain has the slope ${(slopeOf(loading) / 1e9).toPrecision(3)} GPa during loading`);
   return loadingBranch(stress) ?? refuse('SIGN_REVERSED', 'stress', 'The stress never rises in the order recorded');
 }
@@ -126,28 +126,28 @@ function detailOf(input: StressStrainInput, { channels, loading, branch, fit, be
   };
 }
 
-/**
- * @param onProgress told the share done, 0 to 1
- * @throws EvaluationRefused when no result can be given: a channel, unit, gauge length or area is missing, nothing changes, a sign is
- * reversed, or the window lies outside the record
- */
-export function evaluateStressStrain(input: StressStrainInput, onProgress: (fraction: number) => void = () => undefined): FitResult {
+export interface FittedRecord {
+  readonly constants: Readonly<Record<ConstantName, Term | null>>;
+  readonly findings: readonly Finding[];
+  readonly detail: StressStrainDetail;
+}
+
+/** Everything but the propagation of uncertainty. @throws EvaluationRefused as `evaluateStressStrain` */
+export function fitRecord(input: StressStrainInput): FittedRecord {
   const sectionModel = new Model();
   const section = crossSection(input, sectionModel);
   const channels = readChannels(input.channels, input.record, section.area?.value ?? null);
-  onProgress(0.1);
   const loading = branchOf(channels);
   const branch = sliced(channels, loading);
   const selected = selectRegion(branch, loading.rise - loading.from, input.settings.region);
   if ('problem' in selected) return refuse('WINDOW_OUTSIDE_RECORD', 'axial', `The window ${selected.problem}`);
   const { fit } = selected;
   if (!(fit.axial.slope > 0)) return refuse('SIGN_REVERSED', 'axial', `The slope in the window is ${(fit.axial.slope / 1e9).toPrecision(3)} GPa`);
-  onProgress(0.3);
 
   const chord = input.settings.region.by.startsWith('chord');
   const area = channels.stressFrom === 'force' ? section.area : null;
-  const inWindow = (values: Float64Array) => values.subarray(fit.from, fit.to + 1);
-  const steps = { stress: stepsOf(inWindow(branch.y)), axial: stepsOf(inWindow(branch.x)), transverse: branch.t === null ? 0 : stepsOf(inWindow(branch.t)) };
+  const inWindow = (values: Float64Array) => stepsOf(values.subarray(fit.from, fit.to + 1));
+  const steps = { stress: inWindow(branch.y), axial: inWindow(branch.x), transverse: branch.t === null ? 0 : inWindow(branch.t) };
   const constants = staticConstants({
     // A cross-section that E does not hang on stays out of the budget.
     model: area === null ? new Model() : sectionModel, fit, chord, spread: chord ? { E: 0, nu: 0 } : narrowedSpread(branch, fit), area,
@@ -157,7 +157,6 @@ export function evaluateStressStrain(input: StressStrainInput, onProgress: (frac
       instrument: input.instruments.transverse, gaugeLength: channels.transverse.extension ? input.record.transverseGaugeLength : null, steps: steps.transverse,
     },
   });
-  onProgress(0.4);
   const bending = bendingPercent(channels.axial, loading.from, loading.from + fit.to);
   const findings = [
     ...section.findings.filter((f) => f.code !== 'READINGS_MISSING'), ...channels.findings, ...recordFindings(channels.time, channels.stress, channels.axial.mean),
@@ -165,9 +164,26 @@ export function evaluateStressStrain(input: StressStrainInput, onProgress: (frac
     ...stepFindings('stress', steps.stress, fit.stressTo - fit.stressFrom), ...stepFindings('axial strain', steps.axial, fit.strainTo - fit.strainFrom),
     ...bendingFindings(bending, input.specimen.materialClass), ...instrumentFindings(input, channels, fit, area),
   ];
+  return { constants, findings, detail: detailOf(input, { channels, loading, branch, fit, bending, area: section.area }) };
+}
+
+/** Share of the whole that the fit takes; the rest is Monte Carlo. */
+const FIT_SHARE = 0.4;
+
+/** E and ν come from the record's slopes, G and K from them. */
+export const STATIC_ORIGIN = { E: 'measured', nu: 'measured', G: 'derived', K: 'derived' } as const;
+
+/**
+ * @param onProgress told the share done, 0 to 1
+ * @throws EvaluationRefused when no result can be given: a channel, unit, gauge length or area is missing, nothing changes, a sign is
+ * reversed, or the window lies outside the record
+ */
+export function evaluateStressStrain(input: StressStrainInput, onProgress: (fraction: number) => void = () => undefined): FitResult {
+  const { constants, findings, detail } = fitRecord(input);
+  onProgress(FIT_SHARE);
   const result = elasticResult({
-    basis: 'static', constants, origin: { E: 'measured', nu: 'measured', G: 'derived', K: 'derived' }, findings, seed: input.seed,
-    onProgress: (fraction) => onProgress(0.4 + 0.6 * fraction),
+    basis: 'static', constants, origin: STATIC_ORIGIN, findings, seed: input.seed,
+    onProgress: (fraction) => onProgress(FIT_SHARE + (1 - FIT_SHARE) * fraction),
   });
-  return { ...result, detail: detailOf(input, { channels, loading, branch, fit, bending, area: section.area }) };
+  return { ...result, detail };
 }

@@ -7,7 +7,7 @@ import { autoregressiveSlopeUncertainty, lagOne } from '../statistics/autocorrel
 
 export interface SlopeUncertainty {
   readonly standardUncertainty: number;
-  /** Rows that tell something new, n(1 − r)/(1 + r), less the constants fitted; at least 1. */
+  /** Of s² under that correlation: n(1 − r²)/(1 + r²) less the constants fitted; at least 3, below which t has no standard deviation. */
   readonly degreesOfFreedom: number;
   readonly lagOne: number;
 }
@@ -16,7 +16,7 @@ const BLOCKS = 40;
 const FEWEST_ROWS_A_BLOCK = 5;
 
 const credited = (correlation: number): number => Math.min(0.99, Math.max(0, correlation));
-const newRows = (n: number, correlation: number, fitted: number): number => Math.max(1, (n * (1 - credited(correlation))) / (1 + credited(correlation)) - fitted);
+const degreesOfFreedom = (n: number, r: number, fitted: number): number => Math.max(3, (n * (1 - credited(r) ** 2)) / (1 + credited(r) ** 2) - fitted);
 
 function sumOfSquares(values: Float64Array, about = 0): number {
   let sum = 0;
@@ -38,7 +38,7 @@ function atOneScale(x: Float64Array, residuals: Float64Array, meanX: number): Sl
   const n = residuals.length;
   const r = lagOne(residuals);
   const s = Math.sqrt(sumOfSquares(residuals) / Math.max(1, n - 2));
-  return { standardUncertainty: autoregressiveSlopeUncertainty(x, meanX, sumOfSquares(x, meanX), s, credited(r)), degreesOfFreedom: newRows(n, r, 2), lagOne: r };
+  return { standardUncertainty: autoregressiveSlopeUncertainty(x, meanX, sumOfSquares(x, meanX), s, credited(r)), degreesOfFreedom: degreesOfFreedom(n, r, 2), lagOne: r };
 }
 
 /**
@@ -61,5 +61,5 @@ export function chordUncertainty(ends: readonly Float64Array[], distance: number
   const r = lagOne(residuals);
   const s = Math.sqrt(sumOfSquares(residuals) / Math.max(1, residuals.length - fitted));
   const uOfEnds = ends.map((weights) => autoregressiveSlopeUncertainty(weights, 0, sumOfSquares(weights), s, credited(r)) * sumOfSquares(weights));
-  return { standardUncertainty: Math.hypot(...uOfEnds) / distance, degreesOfFreedom: newRows(residuals.length, r, fitted), lagOne: r };
+  return { standardUncertainty: Math.hypot(...uOfEnds) / distance, degreesOfFreedom: degreesOfFreedom(residuals.length, r, fitted), lagOne: r };
 }
