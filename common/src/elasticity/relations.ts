@@ -33,9 +33,10 @@ const PAIRS: Readonly<Record<string, (a: number, b: number, auxetic: boolean) =>
     return [(E - 3 * lambda + R) / 4, (E + 3 * lambda + R) / 6];
   },
   'E,M': (E, M, auxetic) => {
-    const square = E * E + 9 * M * M - 10 * E * M;
-    if (square < -1e-12 * M * M) throw new RelationRefused('inadmissible', 'E may not exceed M');
-    const S = Math.sqrt(Math.max(square, 0)) * (auxetic ? -1 : 1);
+    // S² = E² + 9M² − 10EM, factored: at ν = 0, where E = M, it is then exactly zero.
+    const square = (E - M) * (E - 9 * M);
+    if (square < 0) throw new RelationRefused('inadmissible', 'E may not exceed M');
+    const S = Math.sqrt(square) * (auxetic ? -1 : 1);
     return [(3 * M + E - S) / 8, (3 * M - E + S) / 6];
   },
   'nu,G': (nu, G) => [G, (2 * G * (1 + nu)) / (3 * (1 - 2 * nu))],

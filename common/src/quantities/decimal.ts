@@ -3,29 +3,30 @@ export type DecimalStyle = '.' | ',';
 export type Parsed = { value: number } | { problem: 'empty' | 'not a number' | 'ambiguous' };
 
 const PLAIN = /^[+-]?(\d+([.,]\d*)?|[.,]\d+)([eE][+-]?\d+)?$/;
+const SPACED = /^[+-]?\d{1,3}( \d{3})+([.,]\d+)?$/;
+
+function finite(text: string): Parsed {
+  const value = Number(text);
+  return Number.isFinite(value) ? { value } : { problem: 'not a number' };
+}
 
 /**
  * Reads a typed number. A comma under the point style (or a point under the comma style) is read only where it cannot be a
- * thousands separator: `1,5` yes, `1,234` is ambiguous.
+ * thousands separator: `1,5` yes, `1,234` is ambiguous. Spaces may only group thousands: `1 234,5` yes, `12 34` no.
  */
 export function parseDecimal(text: string, style: DecimalStyle): Parsed {
-  const typed = text.trim().replace(/\u2212/g, '-').replace(/[\s\u00a0\u202f]/g, '');
+  const typed = text.trim().replace(/\u2212/g, '-').replace(/^([+-])\s+/, '$1').replace(/[\u00a0\u2009\u202f]/g, ' ');
   if (typed === '') return { problem: 'empty' };
+  if (SPACED.test(typed)) return finite(typed.replace(/ /g, '').replace(',', '.'));
+  const [thousands, escaped] = style === '.' ? [',', '\\.'] : ['.', ','];
   if (PLAIN.test(typed)) {
-    const other = style === '.' ? ',' : '.';
-    const digitsAfter = typed.split(other)[1]?.split(/[eE]/)[0] ?? '';
-    const couldBeThousands = typed.includes(other) && digitsAfter.length === 3 && /^[+-]?[1-9]\d{0,2}[.,]/.test(typed);
-    if (couldBeThousands) return { problem: 'ambiguous' };
-    return { value: Number(typed.replace(',', '.')) };
+    const couldBeThousands = new RegExp(`^[+-]?[1-9]\\d{0,2}\\${thousands}\\d{3}$`).test(typed);
+    return couldBeThousands ? { problem: 'ambiguous' } : finite(typed.replace(',', '.'));
   }
-  const thousands = style === '.' ? ',' : '.';
-  const grouped = new RegExp(`^[+-]?\\d{1,3}(\\${thousands}\\d{3})+(\\${style}\\d+)?$`);
-  if (grouped.test(typed)) {
-    if (!typed.includes(style) && typed.split(thousands).length === 2) return { problem: 'ambiguous' };
-    return { value: Number(typed.split(thousands).join('').replace(style, '.')) };
-  }
-  const otherGrouped = new RegExp(`^[+-]?\\d{1,3}(\\${style}\\d{3})+\\${thousands}\\d+$`);
-  return otherGrouped.test(typed) ? { problem: 'ambiguous' } : { problem: 'not a number' };
+  const grouped = new RegExp(`^[+-]?\\d{1,3}(\\${thousands}\\d{3})+(${escaped}\\d+)?$`);
+  if (grouped.test(typed)) return finite(typed.split(thousands).join('').replace(style, '.'));
+  const groupedTheOtherWay = new RegExp(`^[+-]?\\d{1,3}(${escaped}\\d{3})+(\\${thousands}\\d+)?$`);
+  return groupedTheOtherWay.test(typed) ? { problem: 'ambiguous' } : { problem: 'not a number' };
 }
 
 /** A number for a person: the decimal sign of their style. */

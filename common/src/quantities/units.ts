@@ -32,7 +32,7 @@ const UNITS: readonly Unit[] = [
   define('mass', 'kg', 1),
   define('mass', 'lb', POUND, ['lbs', 'lbm']),
   define('mass', 'mg', 1e-6),
-  define('mass', 't', 1000),
+  define('mass', 't', 1000, ['Mg', 'tonne']),
   define('time', 's', 1, ['sec', 'seconds', 'second']),
   define('time', 'ms', 1e-3, ['msec']),
   define('time', 'µs', 1e-6, ['us', 'usec', 'microsec', 'microseconds']),
@@ -71,30 +71,31 @@ const UNITS: readonly Unit[] = [
   define('none', '1', 1),
 ];
 
-/** Micro may come as U+00B5 or as Greek mu U+03BC. */
-const spelling = (symbol: string): string => symbol.trim().replace(/\u03bc/g, 'µ');
 const BY_SPELLING = new Map<string, Unit>();
-for (const u of UNITS) for (const name of [u.symbol, ...u.aliases]) BY_SPELLING.set(name, u);
+const BY_LOWER_CASE = new Map<string, { spelling: string; unit: Unit }[]>();
 for (const u of UNITS) for (const name of [u.symbol, ...u.aliases]) {
-  const lower = name.toLowerCase();
-  // Case tells milli from mega: only spellings that stay unambiguous in lower case get one.
-  if (!BY_SPELLING.has(lower) && !['mn', 'mpa', 'mhz', 'mv', 'c', 'v', 'k'].includes(lower)) BY_SPELLING.set(lower, u);
+  BY_SPELLING.set(name, u);
+  const alike = BY_LOWER_CASE.get(name.toLowerCase()) ?? [];
+  BY_LOWER_CASE.set(name.toLowerCase(), [...alike, { spelling: name, unit: u }]);
 }
-BY_SPELLING.set('mpa', unitOf('MPa'));
-BY_SPELLING.set('MPA', unitOf('MPa'));
-BY_SPELLING.set('KN', unitOf('kN'));
-BY_SPELLING.set('uS', unitOf('µs'));
 
-function unitOf(symbol: string): Unit {
-  const found = BY_SPELLING.get(symbol);
-  if (found === undefined) throw new RangeError(`No unit ${symbol}`);
-  return found;
+/** Spellings that could be two units apart by a prefix, or no unit at all. */
+const NEVER_GUESSED: readonly string[] = ['mn', 'MV', 'c', 'k', 'T'];
+
+/** A unit spelt in another case, as `KN`, `MPA` or `mpa`. Milli and mega differ only in case: `mPa` is refused, never read as MPa. */
+function inAnotherCase(symbol: string): Unit | undefined {
+  const [found, ...others] = BY_LOWER_CASE.get(symbol.toLowerCase()) ?? [];
+  if (found === undefined || others.some((other) => other.unit !== found.unit) || NEVER_GUESSED.includes(symbol)) return undefined;
+  const oneCase = symbol === symbol.toLowerCase() || symbol === symbol.toUpperCase();
+  const prefixTurned = /^m/i.test(symbol) && symbol[0] !== found.spelling[0];
+  return prefixTurned && !oneCase ? undefined : found.unit;
 }
 
 /** The unit of a symbol or one of its other spellings; undefined when unknown. */
 export function unit(symbol: string): Unit | undefined {
-  const asSpelt = spelling(symbol);
-  return BY_SPELLING.get(asSpelt) ?? BY_SPELLING.get(asSpelt.toLowerCase());
+  // Micro comes as U+00B5 or as Greek mu U+03BC.
+  const asSpelt = symbol.trim().replace(/\u03bc/g, 'µ');
+  return BY_SPELLING.get(asSpelt) ?? inAnotherCase(asSpelt);
 }
 
 /** Units of one dimension, the first the usual one. */

@@ -1,10 +1,12 @@
 /** The four constants as the contract states them: first order and Monte Carlo side by side, correlations and the whole budget. */
 import type { BudgetLine, ConstantResult, ElasticResult, Finding, MonteCarloCheck, PerConstant } from '../contract/result';
 import { CONSTANTS, type Basis, type ConstantName } from '../contract/vocabulary';
+import { EvaluationRefused } from '../findings/evaluation-refused';
 import { finding } from '../findings/findings';
 import { covariance, coverageFactor, firstOrder, type FirstOrder } from './first-order';
 import type { Model, Term } from './model';
 import { numericalTolerance, propagateDistributions, type MonteCarlo, type Propagated } from './monte-carlo';
+import { secondOrderUncertainty } from './second-order';
 
 export interface ElasticTerms {
   readonly basis: Basis;
@@ -27,7 +29,8 @@ const finite = (value: number): number | null => (Number.isFinite(value) ? value
 const perConstant = <T>(value: (name: ConstantName) => T): PerConstant<T> => ({ E: value('E'), nu: value('nu'), G: value('G'), K: value('K') });
 
 /**
- * @throws RangeError when no constant is given, or one is not a finite number
+ * @throws EvaluationRefused when a constant is not a finite number, as K is not at ν = 0.5
+ * @throws RangeError when no constant is given
  */
 export function elasticResult(terms: ElasticTerms): ElasticResult {
   const known = CONSTANTS.flatMap((name): Known[] => {
@@ -36,7 +39,9 @@ export function elasticResult(terms: ElasticTerms): ElasticResult {
     const first = firstOrder(term);
     return [{ name, term, first, factor: coverageFactor(first.degreesOfFreedom) }];
   });
-  if (known.length === 0 || known.some((k) => !Number.isFinite(k.first.value) || !Number.isFinite(k.first.standardUncertainty))) throw new RangeError('No finite constant');
+  if (known.length === 0) throw new RangeError('No constant to state');
+  const unbounded = known.filter((k) => !Number.isFinite(k.first.value) || !Number.isFinite(k.first.standardUncertainty));
+  if (unbounded.length > 0) throw new EvaluationRefused([...terms.findings, ...unbounded.map((k) => finding('CONSTANT_UNBOUNDED', k.name, `${k.name} = ${k.first.value}, standard uncertainty ${k.first.standardUncertainty}`))]);
   // Shortest intervals are judged at one figure of u, the trials settled to a fifth of that (JCGM 101 8.2).
   const tolerance = (k: Known) => (k.first.standardUncertainty > 0 ? numericalTolerance(k.first.standardUncertainty) : Number.MIN_VALUE);
   const trials = propagateDistributions(known.map((k) => k.term), {
@@ -112,12 +117,20 @@ function constantFindings(known: readonly Known[], check: MonteCarloCheck, trial
     if (name === 'nu') found.push(...nuFindings(first));
     else if (!(first.value > 0)) found.push(finding('MODULUS_NOT_POSITIVE', name, `${name} = ${(first.value / 1e9).toPrecision(3)} GPa`));
   }
-  for (const name of CONSTANTS) {
+  for (const { name, term, first } of known) {
     const c = check.comparison[name];
-    if (c !== null && !c.agrees) found.push(finding('MONTE_CARLO_DISAGREES', name, `The ends of the 95 % intervals of ${name} differ by ${c.lowDifference.toPrecision(2)} and ${c.highDifference.toPrecision(2)}, more than ${c.tolerance.toPrecision(2)}`));
+    if (c !== null && !c.agrees) found.push(finding('MONTE_CARLO_DISAGREES', name, disagreement(name, c, first, secondOrderUncertainty(term))));
   }
-  if (!trials.stable) found.push(finding('MONTE_CARLO_UNSTABLE', 'Monte Carlo', `${trials.trials.toLocaleString('en-GB')} trials`));
+  if (!trials.stable) found.push(finding('MONTE_CARLO_UNSTABLE', 'Monte Carlo', `${trials.trials} trials`));
   return found;
+}
+
+/** Says as well what curvature of the model would account for, where that can be told. */
+function disagreement(name: ConstantName, c: { lowDifference: number; highDifference: number; tolerance: number }, first: FirstOrder, second: number | null): string {
+  const [scale, unit] = name === 'nu' ? [1, ''] : [1e9, ' GPa'];
+  const text = (value: number) => `${(value / scale).toPrecision(2)}${unit}`;
+  const curvature = second === null ? '' : `; the terms of second order alone take u from ${text(first.standardUncertainty)} to ${text(second)}`;
+  return `The ends of the 95 % intervals of ${name} differ by ${text(c.lowDifference)} and ${text(c.highDifference)}, more than ${text(c.tolerance)}${curvature}`;
 }
 
 function nuFindings(first: FirstOrder): Finding[] {

@@ -33,25 +33,9 @@ export function covariance(model: Model, a: Float64Array, b: Float64Array): numb
   return sum;
 }
 
-/** Groups of inputs that hang together by correlation; an uncorrelated input is a group of one. */
-function groups(model: Model): number[][] {
-  const parent = model.inputs.map((_, i) => i);
-  const root = (i: number): number => {
-    const p = parent[i] ?? i;
-    return p === i ? i : root(p);
-  };
-  for (const key of model.correlations.keys()) {
-    const [i = 0, j = 0] = key.split(',').map(Number);
-    parent[root(j)] = root(i);
-  }
-  const byRoot = new Map<number, number[]>();
-  model.inputs.forEach((_, i) => byRoot.set(root(i), [...(byRoot.get(root(i)) ?? []), i]));
-  return [...byRoot.values()];
-}
-
 function effectiveDegreesOfFreedom(model: Model, sensitivities: Float64Array, variance: number): number {
   let sum = 0;
-  for (const group of groups(model)) {
+  for (const group of model.correlationGroups()) {
     const only = sensitivities.map((c, i) => (group.includes(i) ? c : 0));
     const fewest = Math.min(...group.map((i) => model.inputs[i]?.degreesOfFreedom ?? Infinity));
     if (Number.isFinite(fewest)) sum += covariance(model, only, only) ** 2 / fewest;
@@ -66,7 +50,7 @@ export function firstOrder(term: Term): FirstOrder {
   return { value: term.value, standardUncertainty: Math.sqrt(variance), degreesOfFreedom: effectiveDegreesOfFreedom(model, sensitivities, variance), sensitivities };
 }
 
-/** k for 95 %: t_0.975 of the degrees of freedom truncated down, at least one. */
+/** k for the given coverage probability: t of the degrees of freedom truncated down, at least one. */
 export function coverageFactor(degreesOfFreedom: number, probability = 0.95): number {
   const nu = Number.isFinite(degreesOfFreedom) ? Math.max(1, Math.floor(degreesOfFreedom + 1e-9)) : Infinity;
   return tQuantile((1 + probability) / 2, nu);
@@ -76,32 +60,4 @@ export function coverageFactor(degreesOfFreedom: number, probability = 0.95): nu
 export function uncertaintyOf(term: Term, unit: string): Quantity {
   const { value, standardUncertainty, degreesOfFreedom } = firstOrder(term);
   return { value, standardUncertainty, degreesOfFreedom: Number.isFinite(degreesOfFreedom) ? degreesOfFreedom : null, unit };
-}
-
-/**
- * Second-order variance of independent, symmetric inputs: u² + Σᵢⱼ [½ fᵢⱼ² + fᵢ fᵢⱼⱼ] uᵢ² uⱼ² (JCGM 100 5.1.2 Note), the
- * derivatives of the model function taken by central differences of the exact gradient.
- */
-export function secondOrderUncertainty(build: (values: readonly number[]) => Term): number {
-  const { model } = build([]);
-  const x = model.inputs.map((input) => input.value);
-  const u = model.inputs.map((input) => input.standardUncertainty);
-  const gradientAt = (values: readonly number[]) => {
-    const term = build(values);
-    return term.model.gradient(term);
-  };
-  const g0 = gradientAt(x);
-  let variance = g0.reduce((sum, c, i) => sum + (c * (u[i] ?? 0)) ** 2, 0);
-  x.forEach((value, j) => {
-    const h = (u[j] ?? 0) * 1e-2;
-    if (h === 0) return;
-    const plus = gradientAt(x.with(j, value + h));
-    const minus = gradientAt(x.with(j, value - h));
-    x.forEach((_, i) => {
-      const mixed = ((plus[i] ?? 0) - (minus[i] ?? 0)) / (2 * h);
-      const third = ((plus[i] ?? 0) - 2 * (g0[i] ?? 0) + (minus[i] ?? 0)) / (h * h);
-      variance += (0.5 * mixed * mixed + (g0[i] ?? 0) * third) * (u[i] ?? 0) ** 2 * (u[j] ?? 0) ** 2;
-    });
-  });
-  return Math.sqrt(Math.max(variance, 0));
 }

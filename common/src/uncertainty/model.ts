@@ -34,6 +34,9 @@ export interface Node {
 
 const NONE = -1;
 
+/** What must be equal where two quantities name the same input. */
+const FIGURES = ['value', 'standardUncertainty', 'distribution', 'degreesOfFreedom', 'unit'] as const;
+
 export class Term {
   constructor(readonly model: Model, readonly index: number) {}
 
@@ -98,10 +101,10 @@ export class Model {
     const known = this.byKey.get(spec.key);
     if (known !== undefined) {
       const before = this.inputs[this.inputNodes.indexOf(known.index)];
-      if (before?.value !== spec.value || before.standardUncertainty !== spec.standardUncertainty) throw new RangeError(`Input ${spec.key} is used with two different figures`);
+      if (before === undefined || FIGURES.some((figure) => before[figure] !== spec[figure])) throw new RangeError(`Input ${spec.key} is used with two different figures`);
       return known;
     }
-    if (!Number.isFinite(spec.value) || !Number.isFinite(spec.standardUncertainty) || spec.standardUncertainty < 0) throw new RangeError(`Input ${spec.key} needs finite figures`);
+    if (!Number.isFinite(spec.value) || !Number.isFinite(spec.standardUncertainty) || spec.standardUncertainty < 0 || !(spec.degreesOfFreedom > 0)) throw new RangeError(`Input ${spec.key} needs finite figures`);
     const term = this.append({ operation: 'input', left: NONE, right: NONE, parameter: this.inputs.length, value: spec.value });
     this.inputs.push(spec);
     this.inputNodes.push(term.index);
@@ -135,35 +138,45 @@ export class Model {
     return this.append({ operation: 'power', left: a.index, right: NONE, parameter: n, value: a.value ** n });
   }
 
-  /** ∂term/∂input for every input, at the estimates. */
-  gradient(term: Term): Float64Array {
-    const adjoint = new Float64Array(term.index + 1);
-    adjoint[term.index] = 1;
-    for (let k = term.index; k >= 0; k -= 1) {
-      const g = adjoint[k] ?? 0;
-      if (g !== 0) this.spread(this.node(k), g, adjoint);
+  /** Groups of inputs (positions) that hang together by correlation; an uncorrelated input is a group of one. */
+  correlationGroups(): number[][] {
+    const groups = this.inputs.map((_, i) => [i]);
+    for (const key of this.correlations.keys()) {
+      const [one, other] = key.split(',').map((i) => groups.find((group) => group.includes(Number(i))));
+      if (one === undefined || other === undefined || one === other) continue;
+      one.push(...other.splice(0));
+      one.sort((p, q) => p - q);
     }
-    return Float64Array.from(this.inputNodes, (index) => adjoint[index] ?? 0);
+    return groups.filter((group) => group.length > 0);
   }
 
-  private spread(node: Node, g: number, adjoint: Float64Array): void {
-    const add = (index: number, amount: number) => {
-      adjoint[index] = (adjoint[index] ?? 0) + amount;
-    };
-    const left = node.left === NONE ? 0 : this.node(node.left).value;
-    const right = node.right === NONE ? 0 : this.node(node.right).value;
-    if (node.operation === 'add' || node.operation === 'subtract') {
-      add(node.left, g);
-      add(node.right, node.operation === 'add' ? g : -g);
-    } else if (node.operation === 'multiply') {
-      add(node.left, g * right);
-      add(node.right, g * left);
-    } else if (node.operation === 'divide') {
-      add(node.left, g / right);
-      add(node.right, (-g * left) / (right * right));
-    } else if (node.operation === 'power') {
-      add(node.left, g * node.parameter * left ** (node.parameter - 1));
+  /** Value of every node for other values of the inputs than their estimates. */
+  nodeValues(inputs: ArrayLike<number>): Float64Array {
+    const values = new Float64Array(this.nodes.length);
+    this.nodes.forEach(({ operation, left, right, parameter }, k) => {
+      const [a, b] = [values[left] ?? 0, values[right] ?? 0];
+      if (operation === 'input') values[k] = inputs[parameter] ?? Number.NaN;
+      else if (operation === 'constant') values[k] = parameter;
+      else values[k] = operation === 'power' ? a ** parameter : apply(operation, a, b);
+    });
+    return values;
+  }
+
+  /** ∂term/∂input for every input, at the estimates or where `nodeValues` stand. */
+  gradient(term: Term, at?: Float64Array): Float64Array {
+    const adjoint = new Float64Array(term.index + 1);
+    adjoint[term.index] = 1;
+    const value = (k: number) => at?.[k] ?? this.node(k).value;
+    for (let k = term.index; k >= 0; k -= 1) {
+      const g = adjoint[k] ?? 0;
+      if (g === 0) continue;
+      const node = this.node(k);
+      const add = (index: number, amount: number) => {
+        adjoint[index] = (adjoint[index] ?? 0) + amount;
+      };
+      spread(node, g, node.left === NONE ? 0 : value(node.left), node.right === NONE ? 0 : value(node.right), add);
     }
+    return Float64Array.from(this.inputNodes, (index) => adjoint[index] ?? 0);
   }
 
   private append(node: Node): Term {
@@ -176,6 +189,22 @@ function apply(operation: 'add' | 'subtract' | 'multiply' | 'divide', a: number,
   if (operation === 'add') return a + b;
   if (operation === 'subtract') return a - b;
   return operation === 'multiply' ? a * b : a / b;
+}
+
+/** Hands a node's derivative g down to its operands, whose values are a and b. */
+function spread({ operation, left, right, parameter }: Node, g: number, a: number, b: number, add: (index: number, amount: number) => void): void {
+  if (operation === 'add' || operation === 'subtract') {
+    add(left, g);
+    add(right, operation === 'add' ? g : -g);
+  } else if (operation === 'multiply') {
+    add(left, g * b);
+    add(right, g * a);
+  } else if (operation === 'divide') {
+    add(left, g / b);
+    add(right, (-g * a) / (b * b));
+  } else if (operation === 'power') {
+    add(left, g * parameter * a ** (parameter - 1));
+  }
 }
 
 /** Arithmetic mean of terms of one model. @throws RangeError for none */

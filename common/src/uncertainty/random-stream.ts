@@ -37,7 +37,12 @@ export class RandomStream {
 
   /** Student's t with ν degrees of freedom: Z/√(χ²_ν/ν). */
   studentT(degreesOfFreedom: number): number {
-    return this.normal() / Math.sqrt((2 * this.gamma(degreesOfFreedom / 2)) / degreesOfFreedom);
+    return this.normal() * this.studentStretch(degreesOfFreedom);
+  }
+
+  /** √(ν/χ²_ν), by which a normal draw becomes one of Student's t. */
+  studentStretch(degreesOfFreedom: number): number {
+    return Math.sqrt(degreesOfFreedom / (2 * this.gamma(degreesOfFreedom / 2)));
   }
 
   /** Gamma of unit scale, by the method of Marsaglia and Tsang (2000). */

@@ -1,7 +1,8 @@
 /**
  * Draws from the distributions of a model's inputs (JCGM 101 clause 6.4): normal; scaled and shifted t where the degrees of
  * freedom are few; rectangular, triangular and arcsine of the half-width that has the stated standard uncertainty.
- * Correlated inputs are drawn jointly normal through the Cholesky factor of their correlation matrix (6.4.8).
+ * Correlated inputs are drawn jointly through the Cholesky factor of their correlation matrix (6.4.8): normal, or t with the
+ * fewest degrees of freedom among them, the inputs of one group sharing one χ² as those of one regression do.
  */
 import type { InputSpec, Model } from './model';
 import type { RandomStream } from './random-stream';
@@ -20,11 +21,6 @@ function fillOne(input: InputSpec, out: Float64Array, random: RandomStream): voi
     else if (distribution === 'arcsine') out[i] = value + u * Math.SQRT2 * Math.sin(Math.PI * (2 * random.uniform() - 1));
     else out[i] = value + u * random.normal();
   }
-}
-
-/** Positions of inputs that are correlated with another. */
-export function correlatedInputs(model: Model): number[] {
-  return [...new Set([...model.correlations.keys()].flatMap((key) => key.split(',').map(Number)))].sort((a, b) => a - b);
 }
 
 /** Lower triangular L with L Lᵀ = R. @throws RangeError when R is not positive semidefinite */
@@ -47,36 +43,48 @@ function cholesky(r: readonly (readonly number[])[]): number[][] {
   return L;
 }
 
-export class Sampler {
-  private readonly joint: readonly number[];
-  private readonly factor: readonly (readonly number[])[];
+interface JointDraw {
+  readonly inputs: readonly number[];
+  readonly factor: readonly (readonly number[])[];
+  readonly degreesOfFreedom: number;
+}
 
+export class Sampler {
+  private readonly alone: readonly number[];
+  private readonly joint: readonly JointDraw[];
+
+  /** @throws RangeError when the model's correlations contradict one another */
   constructor(private readonly model: Model, private readonly random: RandomStream) {
-    this.joint = correlatedInputs(model);
-    this.factor = cholesky(this.joint.map((i) => this.joint.map((j) => model.correlation(i, j))));
+    const groups = model.correlationGroups();
+    this.alone = groups.filter((group) => group.length === 1).flat();
+    this.joint = groups.filter((group) => group.length > 1).map((inputs) => ({
+      inputs,
+      factor: cholesky(inputs.map((i) => inputs.map((j) => model.correlation(i, j)))),
+      degreesOfFreedom: Math.min(...inputs.map((i) => model.inputs[i]?.degreesOfFreedom ?? Infinity)),
+    }));
   }
 
   /** Fills one array of trials for each input, all of the same length. */
   fill(trials: readonly Float64Array[]): void {
-    this.model.inputs.forEach((input, i) => {
-      const out = trials[i];
-      if (out !== undefined && !this.joint.includes(i)) fillOne(input, out, this.random);
-    });
-    if (this.joint.length > 0) this.fillJoint(trials);
+    for (const i of this.alone) {
+      const [input, out] = [this.model.inputs[i], trials[i]];
+      if (input !== undefined && out !== undefined) fillOne(input, out, this.random);
+    }
+    for (const group of this.joint) this.fillJoint(group, trials);
   }
 
-  private fillJoint(trials: readonly Float64Array[]): void {
+  private fillJoint({ inputs, factor, degreesOfFreedom }: JointDraw, trials: readonly Float64Array[]): void {
     const count = trials[0]?.length ?? 0;
-    const z = new Float64Array(this.joint.length);
+    const z = new Float64Array(inputs.length);
     for (let trial = 0; trial < count; trial += 1) {
       for (let k = 0; k < z.length; k += 1) z[k] = this.random.normal();
-      this.joint.forEach((i, k) => {
-        const input = this.model.inputs[i];
-        const out = trials[i];
+      const stretch = degreesOfFreedom < ENOUGH ? this.random.studentStretch(degreesOfFreedom) : 1;
+      inputs.forEach((i, k) => {
+        const [input, out] = [this.model.inputs[i], trials[i]];
         if (input === undefined || out === undefined) return;
         let drawn = 0;
-        for (let m = 0; m <= k; m += 1) drawn += (this.factor[k]?.[m] ?? 0) * (z[m] ?? 0);
-        out[trial] = input.value + input.standardUncertainty * drawn;
+        for (let m = 0; m <= k; m += 1) drawn += (factor[k]?.[m] ?? 0) * (z[m] ?? 0);
+        out[trial] = input.value + input.standardUncertainty * stretch * drawn;
       });
     }
   }
