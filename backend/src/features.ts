@@ -1,4 +1,5 @@
 import type { Type } from '@nestjs/common';
+import { CertificatesModule } from './certificates/certificates.module';
 import { CustomersModule } from './customers/customers.module';
 import { DocsModule } from './docs/docs.module';
 import { EventsModule } from './events/events.module';
@@ -18,6 +19,7 @@ import { SpecimensModule } from './specimens/specimens.module';
 import { RunsModule } from './runs/runs.module';
 import { FitsModule } from './fits/fits.module';
 import { DeterminationsModule } from './determinations/determinations.module';
+import { VerifyModule } from './verify/verify.module';
 import { WorklistModule } from './worklist/worklist.module';
 
 /** One module a noun of the product. */
@@ -40,6 +42,8 @@ export const FEATURES: Type[] = [
   RunsModule,
   FitsModule,
   DeterminationsModule,
+  CertificatesModule,
+  VerifyModule,
   FindModule,
   WorklistModule,
 ];

@@ -2,12 +2,15 @@ import type { AddressInfo } from 'node:net';
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import { createApplication } from './application';
 import { openDatabase } from './database/open';
+import { firstStart } from './first-start';
 import { fitWorker } from './fits/fit-worker';
 import type { Config } from './platform/config';
 
 export interface Server {
   app: NestExpressApplication;
   port: number;
+  /** What to tell whoever started it. */
+  notes: string[];
   close(): Promise<void>;
 }
 
@@ -16,10 +19,11 @@ export async function startServer(config: Config): Promise<Server> {
   const database = await openDatabase(config);
   try {
     const app = await createApplication(config, database, database.kind === 'embedded' ? fitWorker() : undefined);
+    const notes = await firstStart(app);
     const http = await app.listen(config.port, config.host);
     const { port } = http.address() as AddressInfo;
     return {
-      app, port,
+      app, port, notes,
       close: async () => {
         http.closeAllConnections();
         await app.close();

@@ -2,6 +2,7 @@ import { AsyncLocalStorage } from 'node:async_hooks';
 import { Logger } from '@nestjs/common';
 import type { PgDatabase, PgQueryResultHKT } from 'drizzle-orm/pg-core';
 import type { PgPool } from './pool';
+import { errorText } from '../platform/error-text';
 
 /** Drizzle over PGlite or over a PostgreSQL server: the same type, so that nothing else knows which. */
 export type Queries = PgDatabase<PgQueryResultHKT>;
@@ -73,7 +74,7 @@ export class Database {
     try {
       await task();
     } catch (error) {
-      this.logger.warn(`After a commit: ${error instanceof Error ? error.message : String(error)}`);
+      this.logger.warn(`After a commit: ${errorText(error)}`);
     }
   }
 }

@@ -7,6 +7,7 @@ import { Database } from '../database/database';
 import { orders } from '../database/schema/orders';
 import { RedisConnections } from '../platform/redis';
 import type { Caller } from '../session/caller';
+import { errorText } from '../platform/error-text';
 
 const CHANNEL = 'strainwright:changes';
 const HEARTBEAT_MS = 20_000;
@@ -70,7 +71,7 @@ export class EventsService implements OnModuleInit {
       this.customerOfOrder.set(orderId, order.customerId);
       return order.customerId;
     } catch (error) {
-      this.logger.warn(`An event was not passed on: ${error instanceof Error ? error.message : String(error)}`);
+      this.logger.warn(`An event was not passed on: ${errorText(error)}`);
       return undefined;
     }
   }

@@ -6,14 +6,16 @@ import { Database } from '../database/database';
 import { fits } from '../database/schema/runs';
 import { Compute, ComputeStopped } from '../platform/compute';
 import { Config } from '../platform/config';
+import { errorText } from '../platform/error-text';
 import { FITS_QUEUE, JOB_OPTIONS, WORKER_TIMING } from '../platform/queue/queue.settings';
-import type { FitJob, FitOutcome } from './fit.job';
+import type { FitOutcome } from './fit.job';
 import { FitsOutcome } from './fits.outcome';
 
 /** Where a fit's inputs come from, and the module that computes it: both of this folder, others in tests of the queue. */
 export const FIT_SOURCE = Symbol('fit source');
 export interface FitSource {
-  load(fitId: string): Promise<FitJob>;
+  /** What the task is handed; must survive a structured clone. */
+  load(fitId: string): Promise<object>;
   /** Path of the compiled module with the task. */
   readonly taskFile: string;
 }
@@ -45,7 +47,7 @@ export class FitsProcessor extends WorkerHost implements OnApplicationBootstrap,
     this.worker.concurrency = this.config.fitsAtOnce;
     this.worker.on('error', (error) => this.logger.warn(`The queue: ${error.message}`));
     this.sweeper = setInterval(() => {
-      this.sweeping = this.reconcile().catch((error: unknown) => this.logger.warn(error instanceof Error ? error.message : String(error)));
+      this.sweeping = this.reconcile().catch((error: unknown) => this.logger.warn(errorText(error)));
     }, SWEEP_MS);
     this.sweeper.unref();
   }
@@ -74,9 +76,9 @@ export class FitsProcessor extends WorkerHost implements OnApplicationBootstrap,
         await job.moveToWait(token);
         throw new WaitingError();
       }
-      this.logger.warn(`Fit ${fitId}, attempt ${job.attemptsMade + 1}: ${error instanceof Error ? (error.stack ?? error.message) : String(error)}`);
+      this.logger.warn(`Fit ${fitId}, attempt ${job.attemptsMade + 1}: ${errorText(error)}`);
       const last = job.attemptsMade + 1 >= (job.opts.attempts ?? 1);
-      if (last) await this.outcome.giveUp(fitId, error instanceof Error ? error.message : String(error));
+      if (last) await this.outcome.giveUp(fitId, errorText(error));
       throw error;
     }
   }
@@ -102,7 +104,7 @@ export class FitsProcessor extends WorkerHost implements OnApplicationBootstrap,
       if (writing || now - last < PROGRESS_EVERY_MS) return;
       writing = true;
       last = now;
-      this.outcome.progress(fitId, fraction).catch((error: unknown) => this.logger.warn(String(error))).finally(() => {
+      this.outcome.progress(fitId, fraction).catch((error: unknown) => this.logger.warn(errorText(error))).finally(() => {
         writing = false;
       });
     };

@@ -14,11 +14,14 @@ const environment = z.object({
   STRAINWRIGHT_DEMO: switchedOn.default(true),
   STRAINWRIGHT_PUBLIC_URL: z.url().optional(),
   STRAINWRIGHT_TIME_ZONE: text.default('UTC'),
-  STRAINWRIGHT_LOG: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('info'),
+  LOG_LEVEL: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('warn'),
   /** Fits computed at once in this process. */
   STRAINWRIGHT_FITS_AT_ONCE: z.coerce.number().int().min(1).max(64).default(Math.min(4, Math.max(1, availableParallelism() - 1))),
   /** Number of reverse proxies in front, whose X-Forwarded-For may be believed. */
   STRAINWRIGHT_PROXIES: z.coerce.number().int().min(0).max(10).default(0),
+  /** The first account of a new database without the demo; made up and told once when they are not given. */
+  STRAINWRIGHT_ADMIN_EMAIL: z.email().default('administrator@example.org'),
+  STRAINWRIGHT_ADMIN_PASSWORD: text.min(12).optional(),
   DATABASE_URL: text.optional(),
   REDIS_URL: text.optional(),
   S3_ENDPOINT: z.url().optional(),
@@ -41,6 +44,7 @@ export class Config {
   readonly logLevel: 'silent' | 'error' | 'warn' | 'info' | 'debug';
   readonly fitsAtOnce: number;
   readonly proxies: number;
+  readonly firstAdministrator: { email: string; password: string | undefined };
   readonly databaseUrl: string | undefined;
   readonly redisUrl: string | undefined;
   readonly s3: { endpoint: string; bucket: string; region: string; accessKeyId: string | undefined; secretAccessKey: string | undefined } | undefined;
@@ -68,9 +72,10 @@ export class Config {
     this.demo = e.STRAINWRIGHT_DEMO;
     this.publicUrl = (e.STRAINWRIGHT_PUBLIC_URL ?? `http://localhost:${e.PORT}`).replace(/\/+$/, '');
     this.timeZone = e.STRAINWRIGHT_TIME_ZONE;
-    this.logLevel = e.STRAINWRIGHT_LOG;
+    this.logLevel = e.LOG_LEVEL;
     this.fitsAtOnce = e.STRAINWRIGHT_FITS_AT_ONCE;
     this.proxies = e.STRAINWRIGHT_PROXIES;
+    this.firstAdministrator = { email: e.STRAINWRIGHT_ADMIN_EMAIL.toLowerCase(), password: e.STRAINWRIGHT_ADMIN_PASSWORD };
     this.databaseUrl = e.DATABASE_URL;
     this.redisUrl = e.REDIS_URL;
     this.s3 = e.S3_ENDPOINT === undefined ? undefined : {

@@ -62,10 +62,10 @@ export interface TestApp {
 const PASSWORD = 'a long enough phrase';
 
 /** The whole application over HTTP on a database and a data folder of its own; only the clock is a test's. */
-export async function testApp(options: { worker?: DynamicModule; env?: Record<string, string> } = {}): Promise<TestApp> {
+export async function testApp(options: { worker?: DynamicModule; env?: Record<string, string>; database?: Database } = {}): Promise<TestApp> {
   const folder = mkdtempSync(join(tmpdir(), 'strainwright-'));
-  const config = new Config({ NODE_ENV: 'test', STRAINWRIGHT_DATA: folder, STRAINWRIGHT_LOG: 'silent', STRAINWRIGHT_DEMO: 'off', ...options.env }, ['--require', join(__dirname, '..', '..', 'typescript-hook.cjs')]);
-  const database = await testDatabase();
+  const config = new Config({ NODE_ENV: 'test', STRAINWRIGHT_DATA: folder, LOG_LEVEL: 'silent', STRAINWRIGHT_DEMO: 'off', ...options.env }, ['--require', join(__dirname, '..', '..', 'typescript-hook.cjs')]);
+  const database = options.database ?? (await testDatabase());
   const clock = new TestClock();
   const module = await Test.createTestingModule({ imports: [AppModule.with(config, database, options.worker)] }).overrideProvider(Clock).useValue(clock).compile();
   const nest = await prepare(module.createNestApplication<NestExpressApplication>({ bodyParser: false, bufferLogs: true }), config);

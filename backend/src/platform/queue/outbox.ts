@@ -8,6 +8,7 @@ import { outbox } from '../../database/schema/runs';
 import { Clock } from '../clock';
 import { newId } from '../ids';
 import { JOB_OPTIONS } from './queue.settings';
+import { errorText } from '../error-text';
 
 const SWEEP_MS = 3_000;
 const BATCH = 100;
@@ -58,7 +59,7 @@ export class Outbox implements OnApplicationBootstrap, OnApplicationShutdown {
     try {
       await this.dispatch();
     } catch (error) {
-      this.logger.warn(`Jobs wait: the queue cannot be reached (${error instanceof Error ? error.message : String(error)})`);
+      this.logger.warn(`Jobs wait: the queue cannot be reached (${errorText(error)})`);
     }
   }
 
