@@ -1,5 +1,7 @@
-import { mkdirSync } from 'node:fs';
+import { execFile } from 'node:child_process';
+import { existsSync, mkdirSync, renameSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
+import { promisify } from 'node:util';
 import type { PGlite } from '@electric-sql/pglite';
 import { Logger } from '@nestjs/common';
 import type { Config } from '../platform/config';
@@ -20,8 +22,10 @@ async function openFolder(dataFolder: string): Promise<Database> {
   mkdirSync(dataFolder, { recursive: true, mode: 0o700 });
   const lock = DataLock.acquire(dataFolder);
   try {
+    const folder = join(dataFolder, 'database');
+    if (!existsSync(join(folder, 'PG_VERSION'))) await createInOwnProcess(folder);
     const { PGlite } = await import('@electric-sql/pglite');
-    const pglite = await PGlite.create({ dataDir: join(dataFolder, 'database') });
+    const pglite = await PGlite.create({ dataDir: folder });
     const database = await embedded(pglite, () => lock.release());
     await migrate(database);
     return database;
@@ -29,6 +33,16 @@ async function openFolder(dataFolder: string): Promise<Database> {
     lock.release();
     throw error;
   }
+}
+
+/** Making a new database takes three times the memory that using it does: a process of its own gives it back. */
+async function createInOwnProcess(folder: string): Promise<void> {
+  const draft = `${folder}.new`;
+  rmSync(draft, { recursive: true, force: true });
+  rmSync(folder, { recursive: true, force: true });
+  const script = `require('@electric-sql/pglite').PGlite.create({ dataDir: process.argv[1] }).then((made) => made.close())`;
+  await promisify(execFile)(process.execPath, ['-e', script, draft], { cwd: __dirname });
+  renameSync(draft, folder);
 }
 
 /** A database over a PGlite that is open already. */

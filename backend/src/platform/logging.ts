@@ -1,4 +1,5 @@
 import type { IncomingMessage } from 'node:http';
+import { RequestMethod } from '@nestjs/common';
 import { LoggerModule } from 'nestjs-pino';
 import { Config } from './config';
 import { newId } from './ids';
@@ -7,6 +8,7 @@ import { newId } from './ids';
 export const loggingModule = LoggerModule.forRootAsync({
   inject: [Config],
   useFactory: (config: Config) => ({
+    forRoutes: [{ path: '{*path}', method: RequestMethod.ALL }],
     pinoHttp: {
       level: config.logLevel,
       base: null,
