@@ -1,5 +1,4 @@
 /** Quantiles and probabilities of the distributions in use, through a library. */
-import chisquareQuantile from '@stdlib/stats-base-dists-chisquare-quantile';
 import normalCdf from '@stdlib/stats-base-dists-normal-cdf';
 import normalQuantileOf from '@stdlib/stats-base-dists-normal-quantile';
 import tQuantileOf from '@stdlib/stats-base-dists-t-quantile';
@@ -17,8 +16,4 @@ export function normalProbability(z: number): number {
 /** Quantile of Student's t with `degreesOfFreedom` (Infinity gives the normal). */
 export function tQuantile(p: number, degreesOfFreedom: number): number {
   return Number.isFinite(degreesOfFreedom) && degreesOfFreedom < 1e6 ? tQuantileOf(p, degreesOfFreedom) : normalQuantile(p);
-}
-
-export function chiSquareQuantile(p: number, degreesOfFreedom: number): number {
-  return chisquareQuantile(p, degreesOfFreedom);
 }

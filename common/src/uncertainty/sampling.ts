@@ -37,7 +37,8 @@ function cholesky(r: readonly (readonly number[])[]): number[][] {
       if (i === j) {
         if (sum < -1e-9) throw new RangeError('The correlations contradict one another');
         row[j] = Math.sqrt(Math.max(sum, 0));
-      } else row[j] = get(j, j) > 0 ? sum / get(j, j) : 0;
+      } else if (get(j, j) > 1e-6) row[j] = sum / get(j, j);
+      else if (Math.abs(sum) > 1e-6) throw new RangeError('The correlations contradict one another');
     }
   }
   return L;
