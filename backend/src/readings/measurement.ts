@@ -32,8 +32,7 @@ export async function readingStatesOf(db: Queries, specimenId: string): Promise<
 /** Statistics, area, volume, densities and findings from all readings of a specimen, superseded ones left aside. */
 export async function measurementOf(db: Queries, specimen: { shape: Shape; materialClass: MaterialClass }, all: readonly Reading[]): Promise<SpecimenMeasurementAnswer> {
   const states = await readingStates(db, all);
-  const on = states.at(-1)?.readAt ?? '';
-  const measured = measureSpecimen(new Model(), specimen.shape, specimen.materialClass, states, on);
+  const measured = measureSpecimen(new Model(), specimen.shape, specimen.materialClass, states);
   const told = (term: Term | null, unit: string): Quantity | null => (term === null ? null : uncertaintyOf(term, unit));
   return {
     statistics: [...measured.statistics],

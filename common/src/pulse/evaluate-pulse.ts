@@ -89,7 +89,7 @@ function instrumentFindings(input: PulseInput): Finding[] {
 export function evaluatePulse(input: PulseInput, onProgress: (fraction: number) => void = () => undefined): FitResult {
   const { record, settings, specimen } = input;
   const model = new Model();
-  const measured = measureSpecimen(model, specimen.shape, specimen.materialClass, input.readings, input.performedAt);
+  const measured = measureSpecimen(model, specimen.shape, specimen.materialClass, input.readings);
   const length = needed(measured.length, 'the length along the path');
   const density = needed(measured.density, 'the density (mass and all dimensions, or weighing in water)');
   const timeBase = input.timeInstrument === null ? null : calibrationInput(model, input.timeInstrument, 's');

@@ -43,14 +43,14 @@ export function rangeFindings(instrument: InstrumentState, values: readonly numb
 }
 
 /**
- * The calibration as one shared input: an error common to everything that the instrument read. Absolute (SI, add it) or
+ * The calibration as one shared input: an error common to everything that the instrument read under it. Absolute (SI, add it) or
  * relative (multiply by 1 + it). Standard uncertainty U/k, type B, normal. Null without a calibration.
  */
 export function calibrationInput(model: Model, instrument: InstrumentState, unit: string): { term: Term; relative: boolean } | null {
   const { calibration } = instrument;
   if (calibration === null) return null;
   const term = model.input({
-    key: `calibration.${instrument.id}${calibration.relative ? '' : `.${unit}`}`, label: `Calibration of ${instrument.name}`, unit: calibration.relative ? '1' : unit,
+    key: `calibration.${instrument.id}.${calibration.calibratedOn}${calibration.relative ? '' : `.${unit}`}`, label: `Calibration of ${instrument.name}`, unit: calibration.relative ? '1' : unit,
     value: calibration.correction, standardUncertainty: calibration.expandedUncertainty / calibration.coverageFactor,
     type: 'B', distribution: 'normal', degreesOfFreedom: Infinity, source: `Calibration of ${calibration.calibratedOn}, U/k`,
   });

@@ -77,12 +77,9 @@ function quantityTerm(model: Model, quantity: ReadingQuantity, readings: readonl
   return term;
 }
 
-function quantityFindings(quantity: ReadingQuantity, readings: readonly ReadingState[], on: string): Finding[] {
+function quantityFindings(quantity: ReadingQuantity, readings: readonly ReadingState[]): Finding[] {
   const values = readings.map((r) => r.value);
-  const found = [...new Map(readings.map((r) => [r.instrument.id, r.instrument])).values()].flatMap((instrument) => [
-    ...calibrationFindings(instrument, on),
-    ...rangeFindings(instrument, values, (v) => shown(quantity, v)),
-  ]);
+  const found = readings.flatMap((r) => [...calibrationFindings(r.instrument, r.readAt), ...rangeFindings(r.instrument, [r.value], (v) => shown(quantity, v))]);
   const low = Math.min(...values);
   const ratio = Math.max(...values) / low;
   const suspect = [10, 25.4, 100, 1000].find((factor) => Math.abs(ratio / factor - 1) < 0.15);
@@ -118,11 +115,8 @@ function densityFindings(materialClass: MaterialClass, density: Term, byDimensio
   return found;
 }
 
-/**
- * @param readings those that stand (not superseded)
- * @param on day of use, ISO, for the calibration's due date
- */
-export function measureSpecimen(model: Model, shape: Shape, materialClass: MaterialClass, readings: readonly ReadingState[], on: string): SpecimenMeasurement {
+/** @param readings those that stand (not superseded), each with its instrument as calibrated on the day of the reading */
+export function measureSpecimen(model: Model, shape: Shape, materialClass: MaterialClass, readings: readonly ReadingState[]): SpecimenMeasurement {
   const byQuantity = new Map<ReadingQuantity, ReadingState[]>();
   for (const reading of readings) byQuantity.set(reading.quantity, [...(byQuantity.get(reading.quantity) ?? []), reading]);
   const terms: Partial<Record<ReadingQuantity, Term>> = {};
@@ -132,7 +126,7 @@ export function measureSpecimen(model: Model, shape: Shape, materialClass: Mater
     const term = quantityTerm(model, quantity, group);
     const values = group.map((r) => r.value);
     terms[quantity] = term;
-    findings.push(...quantityFindings(quantity, group, on));
+    findings.push(...quantityFindings(quantity, group));
     statistics.push({
       quantity, n: values.length, mean: meanOf(values), standardDeviation: values.length > 1 ? standardDeviation(values) : null, range: range(values),
       standardUncertainty: firstOrder(term).standardUncertainty, unit: UNIT[quantity],

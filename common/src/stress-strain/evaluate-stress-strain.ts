@@ -46,7 +46,7 @@ function refuse(code: FindingCode, subject: string, seen: string): never {
 function crossSection(input: StressStrainInput, model: Model): SpecimenMeasurement {
   const [, ...across] = DIMENSIONS_OF_SHAPE[input.specimen.shape];
   const readings = input.readings.filter((r) => across.includes(r.quantity));
-  return measureSpecimen(model, input.specimen.shape, input.specimen.materialClass, readings, input.performedAt);
+  return measureSpecimen(model, input.specimen.shape, input.specimen.materialClass, readings);
 }
 
 /** The loading branch to fit, after the signs have been judged by the way from the first row to the stress furthest from it. */
