@@ -33,7 +33,7 @@ describe('FindService.find', () => {
     const work = finishedWork(lab);
     await work.certificate(orderId, 'C-2025-0801', 'draft', []);
     await work.certificate(orderId, 'C-2025-0802', 'released', []);
-    expect((await find(orderNumber, lab.customer)).map((f) => f.kind)).toEqual(['order']);
+    expect(await find(orderNumber, lab.customer)).toEqual([expect.objectContaining({ kind: 'order', path: `/my-orders/${orderId}` })]);
     expect((await find('C-2025-08', lab.customer)).map((f) => f.label)).toEqual(['C-2025-0802 issue 1, released']);
     for (const q of ['R9-Y', 'Caliper', 'S1']) expect(await find(q, lab.customer)).toEqual([]);
     expect(await find(orderNumber, lab.otherCustomer)).toEqual([]);

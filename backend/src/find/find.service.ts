@@ -29,7 +29,7 @@ export class FindService {
   private async orders(text: string, caller: Caller): Promise<Found[]> {
     const rows = await this.database.db.select({ id: orders.id, number: orders.number, title: orders.title }).from(orders)
       .where(and(visibleOrders(caller, 'find.read'), or(...holds(text, orders.number, orders.title)))).orderBy(exactFirst(text, orders.number), desc(orders.createdAt)).limit(MOST);
-    return rows.map((row) => ({ kind: 'order', label: `${row.number} ${row.title}`, path: `/orders/${row.id}` }));
+    return rows.map((row) => ({ kind: 'order', label: `${row.number} ${row.title}`, path: `/${onlyOwn(caller.roles, 'find.read') ? 'my-orders' : 'orders'}/${row.id}` }));
   }
 
   private async samples(text: string): Promise<Found[]> {

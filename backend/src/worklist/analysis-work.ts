@@ -60,6 +60,6 @@ export async function determinationsToReview(db: Queries, personId: string): Pro
 type Row = Awaited<ReturnType<typeof latestDeterminations>>[number];
 
 function item(kind: WorkItem['kind'], row: Row, detail: string): WorkItem {
-  const path = `/determinations/${row.id}${kind === 'determination to review' ? '/review' : ''}`;
+  const path = `/${kind === 'determination to review' ? 'reviews' : 'determinations'}/${row.id}`;
   return { kind, id: row.id, label: `${row.mark} ${row.basis} ${row.number}`, detail, path, since: row.since?.toISOString() ?? null, dueOn: row.dueOn };
 }

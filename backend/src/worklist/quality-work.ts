@@ -48,6 +48,6 @@ export async function checksOutOfLimits(db: Queries): Promise<WorkItem[]> {
     .orderBy(referenceChecks.pieceId, desc(referenceChecks.checkedAt), desc(referenceChecks.id));
   const out = last.map((row) => ({ ...row, en: enOf(row.piece, row.check) })).filter((row) => !isSatisfactory(row.en)).sort((a, b) => b.check.checkedAt.getTime() - a.check.checkedAt.getTime());
   return out.slice(0, MOST).map(({ piece, check, instrument, en }) => ({
-    kind: 'check out of limits', id: piece.id, label: `${piece.name} on ${instrument}`, detail: `E_n = ${en.toFixed(2)}, limit 1`, path: `/reference-checks/${piece.id}`, since: check.checkedAt.toISOString(), dueOn: null,
+    kind: 'check out of limits', id: piece.id, label: `${piece.name} on ${instrument}`, detail: `E_n = ${en.toFixed(2)}, limit 1`, path: '/reference-checks', since: check.checkedAt.toISOString(), dueOn: null,
   }));
 }

@@ -86,7 +86,7 @@ describe('WorklistService for the reviewer', () => {
     const adopter = await lab.app.person(['analyst', 'reviewer']);
     await work.adopt(runId, fitId, adopter.id);
     const submitted = await work.determination(id, 'submitted', { submittedById: both.id, fitIds: [fitId] });
-    expect(await waiting(lab.reviewer, 'determination to review')).toContainEqual(expect.objectContaining({ id: submitted, path: `/determinations/${submitted}/review` }));
+    expect(await waiting(lab.reviewer, 'determination to review')).toContainEqual(expect.objectContaining({ id: submitted, path: `/reviews/${submitted}` }));
     expect(await ids(lab.qualityManager, 'determination to review')).toContain(submitted);
     expect(await ids(both, 'determination to review')).not.toContain(submitted);
     expect(await ids(adopter, 'determination to review')).not.toContain(submitted);
