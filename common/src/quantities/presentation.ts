@@ -12,15 +12,16 @@ export interface Statement {
   unit: string;
 }
 
-export type Rounding = 'half-even' | 'half-up';
+/** `upwards` never understates the uncertainty, as JCGM 100 7.2.6 allows; the value still rounds half to even. */
+export type Rounding = 'half-even' | 'half-up' | 'upwards';
 
 /** Rounds a decimal text or number; `figures` significant figures for the uncertainty. */
 export function roundStatement(value: number | string, uncertainty: number | string, rounding: Rounding = 'half-even', figures = 2): { value: string; uncertainty: string } {
-  const mode = rounding === 'half-even' ? Decimal.ROUND_HALF_EVEN : Decimal.ROUND_HALF_UP;
+  const mode = rounding === 'half-up' ? Decimal.ROUND_HALF_UP : Decimal.ROUND_HALF_EVEN;
   const U = new Exact(uncertainty).abs();
   const y = new Exact(value);
   if (U.isZero()) return { value: y.toFixed(), uncertainty: '0' };
-  const rounded = U.toSignificantDigits(figures, mode);
+  const rounded = U.toSignificantDigits(figures, rounding === 'upwards' ? Decimal.ROUND_UP : mode);
   // Rounding up may carry into a new place (99.6 → 100); the place follows the rounded figure.
   const place = Math.floor(Math.log10(rounded.toNumber()) + 1e-12) - (figures - 1);
   const step = Exact.pow(10, place);

@@ -18,14 +18,15 @@ export function theilSen(x: ArrayLike<number>, y: ArrayLike<number>): { slope: n
 
 /**
  * Huber's M-estimate, k = 1.345, by iteratively reweighted least squares until the coefficients move by less than 1e-14 of
- * themselves. Scale = MAD about zero/Φ⁻¹(¾); the rounded 0.6745 would move the ninth digit of the slope.
+ * themselves. Scale = MAD about zero/`quartile`, the upper quartile Φ⁻¹(¾) of the normal distribution; some programs round it to
+ * 0.6745, which moves the ninth digit of the slope.
  */
-export function huber(x: ArrayLike<number>, y: ArrayLike<number>, k = 1.345): { slope: number; intercept: number; scale: number; iterations: number } {
+export function huber(x: ArrayLike<number>, y: ArrayLike<number>, k = 1.345, quartile = normalQuantile(0.75)): { slope: number; intercept: number; scale: number; iterations: number } {
   let { slope, intercept } = leastSquares(x, y);
   let scale = 0;
   for (let iteration = 1; iteration <= 500; iteration += 1) {
     const residuals = Array.from({ length: x.length }, (_, i) => at(y, i) - intercept - slope * at(x, i));
-    scale = median(residuals.map(Math.abs)) / normalQuantile(0.75);
+    scale = median(residuals.map(Math.abs)) / quartile;
     if (!(scale > 0)) return { slope, intercept, scale: 0, iterations: iteration };
     const next = weighted(x, y, residuals.map((e) => Math.min(1, (k * scale) / Math.abs(e))));
     const moved = Math.abs(next.slope - slope) / Math.abs(next.slope) + Math.abs(next.intercept - intercept) / Math.max(Math.abs(next.intercept), 1e-300);
