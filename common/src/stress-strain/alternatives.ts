@@ -1,7 +1,7 @@
 /** How much the choice of window matters: E over a coarse map of windows, and its spread when the chosen window is narrowed. */
 import { momentsOf, residualSumOf, slopeOf } from './moments';
 import { BlockMoments, stressKnots } from './least-residual-window';
-import { regression, type Branch, type RegionFit } from './line-fit';
+import type { Branch, RegionFit } from './line-fit';
 
 export interface Alternative {
   strainFrom: number;
@@ -40,26 +40,18 @@ function evenly(knots: readonly number[]): number[] {
   return Array.from({ length: STEPS + 1 }, (_, k) => knots[Math.round((k * last) / STEPS)]!);
 }
 
-export interface Spread {
-  /** Half the range, Pa for E. */
-  readonly E: number;
-  readonly nu: number;
-}
-
 /**
  * Half the range of E and ν over the chosen window and the three that leave out a tenth of its rows at the lower end, the upper end
  * and both. Narrower windows are as acceptable as the chosen one; wider ones are not, since they may run into toe or yield.
  */
-export function narrowedSpread(branch: Branch, fit: RegionFit): Spread {
-  const tenth = Math.floor((fit.to - fit.from + 1) / 10);
-  if (tenth < 1) return { E: 0, nu: 0 };
-  const fits = [fit, regression(branch, fit.from + tenth, fit.to), regression(branch, fit.from, fit.to - tenth), regression(branch, fit.from + tenth, fit.to - tenth)];
+export function narrowedSpread(branch: Branch, { from, to, noise }: RegionFit): { readonly E: number; readonly nu: number } {
+  const tenth = Math.floor((to - from + 1) / 10);
+  const windows = [[from, to + 1], [from + tenth, to + 1], [from, to + 1 - tenth], [from + tenth, to + 1 - tenth]] as const;
+  const slopes = (values: Float64Array) => windows.map(([first, end]) => {
+    const m = momentsOf(branch.x, values, first, end);
+    const attenuation = noise.attenuation > 0 ? noise.standardDeviation ** 2 / (m.sxx / (m.n - 1)) : 0;
+    return slopeOf(m) / (1 - attenuation);
+  });
   const half = (values: number[]) => (Math.max(...values) - Math.min(...values)) / 2;
-  return { E: half(fits.map((f) => f.axial.slope)), nu: half(fits.map((f) => f.transverse?.slope ?? 0)) };
-}
-
-/** q of any rows of a branch. */
-export function qualityOf(branch: Branch, from: number, to: number): number {
-  const m = momentsOf(branch.x, branch.y, from, to + 1);
-  return Math.sqrt(residualSumOf(m) / (m.n - 2)) / (slopeOf(m) * (branch.x[to]! - branch.x[from]!));
+  return tenth < 1 ? { E: 0, nu: 0 } : { E: half(slopes(branch.y)), nu: branch.t === null ? 0 : half(slopes(branch.t)) };
 }

@@ -104,7 +104,7 @@ export function readChannels(raw: readonly RawChannel[], record: StressStrainRec
   const all: RecordChannels = {
     rows: Int32Array.from(stress, (_, i) => i), time: time === undefined ? null : time.values, stress, stressFrom, axial, transverse, findings: [],
   };
-  return turned(readable(all));
+  return turned(readable(all), record.compressive);
 }
 
 /** Leaves out rows in which a needed cell could not be read. */
@@ -122,11 +122,12 @@ function readable(all: RecordChannels): RecordChannels {
 }
 
 /** Turns every channel when stress and axial strain both run negative: the slopes keep their sign, and loading becomes positive. */
-function turned(all: RecordChannels): RecordChannels {
+function turned(all: RecordChannels, compressive: boolean): RecordChannels {
   if (!runsNegative(all.stress) || !runsNegative(all.axial.mean)) return all;
   const turn = (values: Float64Array) => values.map((v) => -v);
+  const unexpected = compressive ? '' : ', although the run is not marked as compression';
   return {
     ...all, stress: turn(all.stress), axial: transform(all.axial, turn), transverse: all.transverse === null ? null : transform(all.transverse, turn),
-    findings: [...all.findings, finding('SIGNS_TURNED', 'record', 'Stress and axial strain both run negative in the file; all channels were turned so that loading is positive')],
+    findings: [...all.findings, finding('SIGNS_TURNED', 'record', `Stress and axial strain both run negative in the file${unexpected}; all channels were turned so that loading is positive`)],
   };
 }

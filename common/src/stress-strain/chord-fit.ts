@@ -14,7 +14,7 @@ export interface Chord {
   readonly to: number;
 }
 
-export interface Passage {
+interface Passage {
   /** First row at or above the level, last row below it. */
   readonly first: number;
   readonly last: number;

@@ -162,6 +162,7 @@ export function fitRecord(input: StressStrainInput): FittedRecord {
     ...section.findings.filter((f) => f.code !== 'READINGS_MISSING'), ...channels.findings, ...recordFindings(channels.time, channels.stress, channels.axial.mean),
     ...settingFindings(input.settings, selected, loading, channels), ...windowFindings(branch, fit, chord, channels.rows.subarray(loading.from)),
     ...stepFindings('stress', steps.stress, fit.stressTo - fit.stressFrom), ...stepFindings('axial strain', steps.axial, fit.strainTo - fit.strainFrom),
+    ...stepFindings('transverse strain', steps.transverse, Math.abs(fit.transverse?.slope ?? 0) * (fit.strainTo - fit.strainFrom)),
     ...bendingFindings(bending, input.specimen.materialClass), ...instrumentFindings(input, channels, fit, area),
   ];
   return { constants, findings, detail: detailOf(input, { channels, loading, branch, fit, bending, area: section.area }) };

@@ -3,7 +3,7 @@
  *
  * 1. The branch is cut at its shear tangency, the last row where stress and strain, each scaled to 0…1 over the branch, differ by
  *    the greatest y − x within one hundredth; a branch that never bows upwards is kept whole.
- * 2. Windows start and end on knots: every row of a short branch, 240 equal steps of stress in a long one, so that rests and rows
+ * 2. Windows start and end on knots: every row of a short branch, 120 equal steps of stress in a long one, so that rests and rows
  *    crowded past yield weigh nothing. Rows stay in the order recorded: sorting noisy strain would pick rows by their noise.
  * 3. A window counts when it holds a fifth of the knots and 8 rows, spans 40 % of the cut branch's stress, and the slopes of its first and
  *    last quarter lie within 5 % of its own slope b, two standard uncertainties of the quarter's slope allowed.
@@ -16,7 +16,7 @@
  */
 import { merged, momentsOf, residualSumOf, slopeOf, type Moments } from './moments';
 
-export interface Window {
+interface Window {
   /** First and last row of the branch arrays, both included. */
   readonly from: number;
   readonly to: number;
@@ -33,12 +33,12 @@ export interface WindowChoice {
   readonly tangency: number;
 }
 
-export interface Easing {
+interface Easing {
   readonly quarter: number;
   readonly span: number;
 }
 
-export const EASINGS: readonly Easing[] = [
+const EASINGS: readonly Easing[] = [
   { quarter: 0.05, span: 0.4 },
   { quarter: 0.1, span: 0.4 },
   { quarter: 0.2, span: 0.4 },
@@ -46,7 +46,7 @@ export const EASINGS: readonly Easing[] = [
   { quarter: Infinity, span: 0.2 },
 ];
 
-const MOST_KNOTS = 240;
+const MOST_KNOTS = 120;
 export const LEAST_ROWS = 8;
 
 /** Last row at which the sheared branch is within 1 % of its greatest height. */
