@@ -9,7 +9,7 @@ import { call } from '../../api/client';
 import { useAct, useApi } from '../../api/queries';
 import { useMay, useSession, useUser } from '../../api/session';
 
-const answer = z.array(found);
+const answer = z.object({ items: z.array(found) });
 
 /** Finds anything by mark, number or scanned label. */
 function Find() {
@@ -18,13 +18,15 @@ function Find() {
   const query = useApi(answer, `/api/find?q=${encodeURIComponent(text.trim())}`, { enabled: text.trim().length >= 2 });
   return (
     <Autocomplete
-      freeSolo blurOnSelect clearOnBlur options={query.data ?? []} filterOptions={(all) => all} inputValue={text} value={null}
+      freeSolo blurOnSelect clearOnBlur options={query.data?.items ?? []} filterOptions={(all) => all} inputValue={text} value={null}
       getOptionLabel={(option) => (typeof option === 'string' ? option : option.label)} groupBy={(option) => option.kind}
       onInputChange={(_event, value) => setText(value)}
       onChange={(_event, chosen) => {
-        const target = typeof chosen === 'string' ? query.data?.[0] : chosen;
+        // A scanned label types the specimen's own address.
+        const scanned = typeof chosen === 'string' ? /\/specimens\/[0-9a-f-]{36}/.exec(chosen)?.[0] : undefined;
+        const path = scanned ?? (typeof chosen === 'string' ? query.data?.items[0] : chosen)?.path;
         setText('');
-        if (target !== null && target !== undefined) void navigate(target.path);
+        if (path !== undefined) void navigate(path);
       }}
       renderInput={(params) => <TextField {...params} id="find" label="Find a mark or number" />} sx={{ width: { xs: '100%', sm: 320 } }} size="small"
     />
