@@ -1,5 +1,5 @@
 /** How much the choice of window matters: E over a coarse map of windows, and its spread when the chosen window is narrowed. */
-import { momentsOf, residualSumOf, slopeOf } from './moments';
+import { momentsOf, residualSumOf, slopeOf, type Moments } from './moments';
 import { BlockMoments, stressKnots } from './least-residual-window';
 import type { Branch, RegionFit } from './line-fit';
 
@@ -40,18 +40,36 @@ function evenly(knots: readonly number[]): number[] {
   return Array.from({ length: STEPS + 1 }, (_, k) => knots[Math.round((k * last) / STEPS)]!);
 }
 
+/** Shares of the window's rows left out at the lower and at the upper end. */
+const NARROWED = [[0.1, 0], [0, 0.1], [0.1, 0.1], [0.25, 0], [0, 0.25], [0.25, 0.25]] as const;
+
 /**
- * Half the range of E and ν over the chosen window and the three that leave out a tenth of its rows at the lower end, the upper end
- * and both. Narrower windows are as acceptable as the chosen one; wider ones are not, since they may run into toe or yield.
+ * Half the range of a slope over the chosen window and narrower ones, as far as it goes beyond noise. Narrower windows are as acceptable
+ * as the chosen one; wider ones are not, since they may run into toe or yield. Of the change d of the slope, noise explains
+ * u²(Sxx/Sxx′ − 1), the variance that the shorter window adds (both fit one line); d is shrunk to √(d² − that).
  */
-export function narrowedSpread(branch: Branch, { from, to, noise }: RegionFit): { readonly E: number; readonly nu: number } {
-  const tenth = Math.floor((to - from + 1) / 10);
-  const windows = [[from, to + 1], [from + tenth, to + 1], [from, to + 1 - tenth], [from + tenth, to + 1 - tenth]] as const;
-  const slopes = (values: Float64Array) => windows.map(([first, end]) => {
-    const m = momentsOf(branch.x, values, first, end);
-    const attenuation = noise.attenuation > 0 ? noise.standardDeviation ** 2 / (m.sxx / (m.n - 1)) : 0;
-    return slopeOf(m) / (1 - attenuation);
-  });
-  const half = (values: number[]) => (Math.max(...values) - Math.min(...values)) / 2;
-  return tenth < 1 ? { E: 0, nu: 0 } : { E: half(slopes(branch.y)), nu: branch.t === null ? 0 : half(slopes(branch.t)) };
+function spreadOf(x: Float64Array, y: Float64Array, fit: RegionFit, u: number): number {
+  const rows = fit.to - fit.from + 1;
+  const whole = momentsOf(x, y, fit.from, fit.to + 1);
+  const attenuationOf = (m: Moments) => (fit.noise.attenuation > 0 ? fit.noise.standardDeviation ** 2 / (m.sxx / (m.n - 1)) : 0);
+  const slope = (m: Moments) => slopeOf(m) / (1 - attenuationOf(m));
+  let [low, high] = [0, 0];
+  for (const [below, above] of NARROWED) {
+    const [first, end] = [fit.from + Math.floor(below * rows), fit.to + 1 - Math.floor(above * rows)];
+    if (end - first < FEWEST_ROWS || end - first === rows) continue;
+    const m = momentsOf(x, y, first, end);
+    const change = slope(m) - slope(whole);
+    const beyondNoise = Math.sign(change) * Math.sqrt(Math.max(0, change ** 2 - u ** 2 * (whole.sxx / m.sxx - 1)));
+    low = Math.min(low, beyondNoise);
+    high = Math.max(high, beyondNoise);
+  }
+  return (high - low) / 2;
+}
+
+/** That of E (Pa) and of ν. */
+export function narrowedSpread(branch: Branch, fit: RegionFit): { readonly E: number; readonly nu: number } {
+  return {
+    E: spreadOf(branch.x, branch.y, fit, fit.axial.slopeUncertainty),
+    nu: branch.t === null || fit.transverse === null ? 0 : spreadOf(branch.x, branch.t, fit, fit.transverse.slopeUncertainty),
+  };
 }

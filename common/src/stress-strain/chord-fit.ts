@@ -7,6 +7,7 @@
  */
 import { regression, residualCorrelation, type Branch, type Line, type RegionFit } from './line-fit';
 import { chordUncertainty } from './slope-uncertainty';
+import { aboutSmoothCurve, type Noise } from './smooth-curve';
 
 export interface Chord {
   readonly along: 'strain' | 'stress';
@@ -48,34 +49,6 @@ function endAt(values: Float64Array, level: number, { first, last }: Passage, ro
 }
 
 const averageOf = (values: Float64Array, end: End): number => end.weights.reduce((sum, w, i) => sum + w * values[end.firstRow + i]!, 0);
-
-interface Noise {
-  readonly residuals: Float64Array;
-  /** Constants fitted to the rows. */
-  readonly fitted: number;
-}
-
-/** Noise of y about a smooth curve in x: residuals of a cubic (fewer powers where rows are few), by orthogonal polynomials. */
-function aboutSmoothCurve(x: Float64Array, y: Float64Array): Noise {
-  const powers = x.length >= 10 ? 3 : x.length >= 6 ? 2 : 1;
-  const residuals = Float64Array.from(y);
-  let before = new Float64Array(x.length);
-  let basis = new Float64Array(x.length).fill(1);
-  let normBefore = 1;
-  for (let power = 0; power <= powers; power += 1) {
-    let [norm, moment, projection] = [0, 0, 0];
-    for (let i = 0; i < x.length; i += 1) {
-      norm += basis[i]! ** 2;
-      moment += x[i]! * basis[i]! ** 2;
-      projection += residuals[i]! * basis[i]!;
-    }
-    if (!(norm > 0)) return { residuals, fitted: power };
-    for (let i = 0; i < x.length; i += 1) residuals[i]! -= (projection / norm) * basis[i]!;
-    const next = basis.map((b, i) => (x[i]! - moment / norm) * b - (power === 0 ? 0 : norm / normBefore) * before[i]!);
-    [before, basis, normBefore] = [basis, next, norm];
-  }
-  return { residuals, fitted: powers + 1 };
-}
 
 /** The regression's line turned into the chord; its uncertainty comes from the noise at the ends, not from the record's curvature. */
 function chordLine(regressed: Line, noise: Noise, slope: number, intercept: number, x: Float64Array, ends: readonly Float64Array[], distance: number): Line {

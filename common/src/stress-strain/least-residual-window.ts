@@ -14,7 +14,9 @@
  *
  * Own rule; it names and follows no standard. The spec beside it shows what steps 2 and 5 gain over least q alone.
  */
+import { lagOne } from '../statistics/autocorrelation';
 import { merged, momentsOf, residualSumOf, slopeOf, type Moments } from './moments';
+import { aboutSmoothCurve } from './smooth-curve';
 
 interface Window {
   /** First and last row of the branch arrays, both included. */
@@ -147,20 +149,15 @@ function leastQuality(found: readonly Candidate[]): Candidate {
   return found.filter((c) => c.quality <= least).reduce((a, b) => (b.span > a.span ? b : a));
 }
 
-/** Variance of the residuals that counts for a slope: inflated by (1 + r)/(1 − r) where neighbours, correlated by r, tell the same. */
-function effectiveVariance(x: Float64Array, y: Float64Array, from: number, to: number, m: Moments): number {
-  const slope = slopeOf(m);
-  let products = 0;
-  let squares = 0;
-  let previous = 0;
-  for (let i = from; i < to; i += 1) {
-    const residual = y[i]! - m.meanY - slope * (x[i]! - m.meanX);
-    products += residual * previous;
-    squares += residual * residual;
-    previous = residual;
-  }
-  const r = squares > 0 ? Math.min(0.99, Math.max(0, products / squares)) : 0;
-  return (squares / (m.n - 2)) * ((1 + r) / (1 - r));
+/**
+ * Variance of the noise that counts for a slope: about a smooth curve, since toe and yield are what is looked for, and inflated by
+ * (1 + r)/(1 − r) where neighbours, correlated by r, tell the same.
+ */
+function effectiveVariance(x: Float64Array, y: Float64Array, from: number, to: number): number {
+  const { residuals, fitted } = aboutSmoothCurve(x.subarray(from, to), y.subarray(from, to));
+  const r = Math.min(0.99, Math.max(0, lagOne(residuals)));
+  const squares = residuals.reduce((sum, e) => sum + e * e, 0);
+  return (squares / Math.max(1, residuals.length - fitted)) * ((1 + r) / (1 - r));
 }
 
 const TRIM = 2;
@@ -168,7 +165,7 @@ const TRIM = 2;
 /** Step 5. The variance of the change of slope is that of the shorter window less that of the longer (both fit one line). */
 function trimmed(x: Float64Array, y: Float64Array, blocks: BlockMoments, start: Candidate, leastSpan: number): { i: number; j: number } {
   const { knots } = blocks;
-  const noise = effectiveVariance(x, y, knots[start.i]!, knots[start.j]!, blocks.between(start.i, start.j));
+  const noise = effectiveVariance(x, y, knots[start.i]!, knots[start.j]!);
   const variance = Math.max(noise, (ROUNDING * start.span) ** 2);
   let chosen = { i: start.i, j: start.j };
   for (;;) {

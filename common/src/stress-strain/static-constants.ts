@@ -49,7 +49,7 @@ function slopeTerm(model: Model, key: string, name: string, unit: string, line: 
   if (!(spread > 0)) return { fitted, slope: fitted };
   const choice = model.input({
     key: `window.${key}`, label: `Choice of window, slope of ${name}`, unit, value: 0, standardUncertainty: (spread * scale) / Math.sqrt(3), type: 'B',
-    distribution: 'rectangular', degreesOfFreedom: Infinity, source: 'Half the range over windows narrowed by a tenth, /√3',
+    distribution: 'rectangular', degreesOfFreedom: Infinity, source: 'Half the range over windows narrowed by up to a quarter at either end, beyond noise, /√3',
   });
   return { fitted, slope: fitted.plus(choice) };
 }

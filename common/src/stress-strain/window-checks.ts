@@ -11,6 +11,8 @@ import type { Branch, RegionFit } from './line-fit';
 const percent = (share: number, digits = 2): string => `${(100 * share).toPrecision(digits)} %`;
 
 const FEW_POINTS = 10;
+/** Share by which noise flattens the slopes, above which a person is told; below it they are corrected silently. */
+const NOISY = 0.001;
 const SHORT_RANGE = 0.2;
 const LOW_CORRELATION = 0.995;
 
@@ -109,7 +111,7 @@ const CURVATURE_OF_CHORD = 0.2;
 export function windowFindings(branch: Branch, fit: RegionFit, chord: boolean, rows: Int32Array): Finding[] {
   const found = curvatureFindings(branch, fit, chord ? CURVATURE_OF_CHORD : CURVATURE);
   if (fit.axial.correlationCoefficient < LOW_CORRELATION) found.push(finding('LOW_CORRELATION', 'axial', `r = ${fit.axial.correlationCoefficient.toFixed(4)}`));
-  if (fit.noise.attenuation > 0) found.push(finding('RECORD_NOISY', 'axial strain', `Noise of ${(1e6 * fit.noise.standardDeviation).toPrecision(2)} µε flattens the slopes by ${percent(fit.noise.attenuation)}; they are corrected for it`));
+  if (fit.noise.attenuation > NOISY) found.push(finding('RECORD_NOISY', 'axial strain', `Noise of ${(1e6 * fit.noise.standardDeviation).toPrecision(2)} µε flattens the slopes by ${percent(fit.noise.attenuation)}; they are corrected for it`));
   if (chord) return found;
   return [...extentFindings(branch, fit), ...found, ...trendFindings(fit), ...outlierFindings(fit, rows)];
 }
