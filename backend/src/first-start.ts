@@ -1,5 +1,3 @@
-import { existsSync } from 'node:fs';
-import { join } from 'node:path';
 import type { INestApplicationContext } from '@nestjs/common';
 import { eq } from 'drizzle-orm';
 import { Database } from './database/database';
@@ -10,38 +8,31 @@ import { Config } from './platform/config';
 /** Stands in `number_series` while the demo is being made (1) and when it was finished (2). */
 const DEMO = 'demo';
 
-interface DemoModule {
-  seedDemo(app: INestApplicationContext): Promise<void>;
-  DEMO_SIGN_INS: readonly { who: string; email: string; password: string }[];
+/** True before anybody is there. */
+export async function isNew({ db }: Database): Promise<boolean> {
+  return (await db.select({ id: people.id }).from(people).limit(1)).length === 0;
 }
 
 /** Fills a new database: with the demo, or with a first administrator. @returns lines to tell whoever started the program */
 export async function firstStart(app: INestApplicationContext): Promise<string[]> {
-  const { db } = app.get(Database);
-  const [somebody] = await db.select({ id: people.id }).from(people).limit(1);
-  if (somebody === undefined) {
+  const database = app.get(Database);
+  if (await isNew(database)) {
     if (!app.get(Config).demo) return tellAdministrator(app);
     await makeDemo(app);
   }
-  const [made] = await db.select().from(numberSeries).where(eq(numberSeries.series, DEMO));
+  const [made] = await database.db.select().from(numberSeries).where(eq(numberSeries.series, DEMO));
   if (made === undefined) return [];
   if (made.last < 2) return [`The demo was interrupted while it was made. To have all of it, stop, delete ${app.get(Config).dataFolder} and start again.`];
-  const { DEMO_SIGN_INS } = await demoModule();
+  const { DEMO_SIGN_INS } = await import('./demo/people');
   return ['Demo sign-ins (everything in the demo is invented):', ...DEMO_SIGN_INS.map(({ who, email, password }) => `  ${who.padEnd(16)}  ${email.padEnd(40)}  ${password}`)];
 }
 
 async function makeDemo(app: INestApplicationContext): Promise<void> {
   const { db } = app.get(Database);
-  const { seedDemo } = await demoModule();
+  const { seedDemo } = await import('./demo/seed');
   await db.insert(numberSeries).values({ series: DEMO, last: 1 });
   await seedDemo(app);
   await db.update(numberSeries).set({ last: 2 }).where(eq(numberSeries.series, DEMO));
-}
-
-async function demoModule(): Promise<DemoModule> {
-  const path = join(__dirname, 'demo', 'seed.js');
-  if (!existsSync(path)) return { seedDemo: async () => undefined, DEMO_SIGN_INS: [] };
-  return (await import(path)) as DemoModule;
 }
 
 async function tellAdministrator(app: INestApplicationContext): Promise<string[]> {

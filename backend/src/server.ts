@@ -2,7 +2,7 @@ import type { AddressInfo } from 'node:net';
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import { createApplication } from './application';
 import { openDatabase } from './database/open';
-import { firstStart } from './first-start';
+import { firstStart, isNew } from './first-start';
 import { fitWorker } from './fits/fit-worker';
 import type { Config } from './platform/config';
 
@@ -18,7 +18,9 @@ export interface Server {
 export async function startServer(config: Config): Promise<Server> {
   const database = await openDatabase(config);
   try {
-    const app = await createApplication(config, database, database.kind === 'embedded' ? fitWorker() : undefined);
+    // The demo's fits are computed while it is made, before any worker of its own can be there.
+    const computes = database.kind === 'embedded' || (config.demo && (await isNew(database)));
+    const app = await createApplication(config, database, computes ? fitWorker() : undefined);
     const notes = await firstStart(app);
     const http = await app.listen(config.port, config.host);
     const { port } = http.address() as AddressInfo;

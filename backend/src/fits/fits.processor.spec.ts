@@ -184,7 +184,9 @@ describe('FitsProcessor, stopped and started', () => {
     await second.app.nest.close();
   }, 30_000);
 
-  it('takes up at once what a killed process left marked as running', async () => {
+  // On a server other processes may hold jobs: there, a dead one's job is found when its lock has run out (test/data-layer).
+  const onEmbedded = process.env.STRAINWRIGHT_TEST_DATABASE_URL === undefined;
+  if (onEmbedded) it('takes up at once what a killed process left marked as running', async () => {
     const idle = await start('refuse');
     await idle.app.get(FitsProcessor).worker.pause();
     const id = await askForFit(database, idle.app.get(Outbox), run, 2);
