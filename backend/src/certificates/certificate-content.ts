@@ -5,8 +5,7 @@ import type { Queries } from '../database/database';
 import { certificates } from '../database/schema/certificates';
 import { determinations } from '../database/schema/determinations';
 import { samples, specimens } from '../database/schema/orders';
-import { adoptions } from '../database/schema/runs';
-import { separationProblem } from '../determinations/separation';
+import { separationOf } from '../determinations/adopted-work';
 import type { FieldError } from '../platform/problem';
 
 type ContentRow = Awaited<ReturnType<typeof loadContent>>[number];
@@ -53,12 +52,9 @@ export async function takeUpLater(db: Queries, ids: readonly string[]): Promise<
 }
 
 /** Why a person may not release a certificate with these determinations; null when they may. */
-export async function releaseSeparation(db: Queries, ids: readonly string[], personId: string, separationOfDuties: boolean): Promise<string | null> {
-  const rows = await loadContent(db, ids);
-  const adopted = await db.select({ fitId: adoptions.fitId, personId: adoptions.personId }).from(adoptions).where(inArray(adoptions.fitId, rows.flatMap((r) => r.fitIds)));
-  for (const row of rows) {
-    const adoptedByIds = adopted.filter((a) => row.fitIds.includes(a.fitId)).map((a) => a.personId);
-    const problem = separationProblem({ adoptedByIds, composedById: row.composedById, submittedById: row.submittedById }, personId, 'release', separationOfDuties);
+export async function releaseSeparation(db: Queries, ids: readonly string[], personId: string): Promise<string | null> {
+  for (const row of await loadContent(db, ids)) {
+    const problem = await separationOf(db, row, personId, 'release');
     if (problem !== null) return `${row.mark}, ${row.basis}: ${problem}`;
   }
   return null;

@@ -9,7 +9,6 @@ import { matching, sortedBy, stateAsked } from '../database/listing';
 import { certificateDocuments, certificates } from '../database/schema/certificates';
 import { orders } from '../database/schema/orders';
 import { customers } from '../database/schema/people';
-import { LaboratoryService } from '../laboratory/laboratory.service';
 import { Clock } from '../platform/clock';
 import { Config } from '../platform/config';
 import { notFound, refused } from '../platform/problem';
@@ -33,7 +32,7 @@ const NOT_RELEASED = 'not released';
 @Injectable()
 export class CertificatesService {
   constructor(
-    private readonly database: Database, private readonly laboratory: LaboratoryService, private readonly storage: Storage,
+    private readonly database: Database, private readonly storage: Storage,
     private readonly renderer: CertificateRenderer, private readonly clock: Clock, private readonly config: Config,
   ) {}
 
@@ -80,7 +79,6 @@ export class CertificatesService {
 
   private async separationFor(db: Queries, row: CertificateRow, caller: Caller): Promise<string | null> {
     if (row.state !== 'draft' || !mayDo(caller.roles, 'certificates.release')) return null;
-    const { separationOfDuties } = await this.laboratory.read(db);
-    return releaseSeparation(db, row.determinationIds, caller.id, separationOfDuties);
+    return releaseSeparation(db, row.determinationIds, caller.id);
   }
 }

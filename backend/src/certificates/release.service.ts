@@ -8,7 +8,6 @@ import { certificateDocuments, certificates } from '../database/schema/certifica
 import { determinations } from '../database/schema/determinations';
 import { orders } from '../database/schema/orders';
 import { EventsService } from '../events/events.service';
-import { LaboratoryService } from '../laboratory/laboratory.service';
 import { sha256 } from '../platform/canonical';
 import { Clock } from '../platform/clock';
 import { Config } from '../platform/config';
@@ -32,7 +31,7 @@ type StoredDocuments = Record<DocumentFormat, StoredFile>;
 @Injectable()
 export class ReleaseService {
   constructor(
-    private readonly database: Database, private readonly session: SessionService, private readonly laboratory: LaboratoryService, private readonly renderer: CertificateRenderer,
+    private readonly database: Database, private readonly session: SessionService, private readonly renderer: CertificateRenderer,
     private readonly storage: Storage, private readonly secrets: Secrets, private readonly record: RecordService, private readonly events: EventsService,
     private readonly clock: Clock, private readonly config: Config,
   ) {}
@@ -65,8 +64,7 @@ export class ReleaseService {
     if (seen !== undefined && seen !== row.version) throw stale('certificate', summaryOf(row));
     const errors = contentErrors(row.determinationIds, await loadContent(db, row.determinationIds), row.orderId);
     if (errors.length > 0) throw invalidFields(errors, 'certificate.content');
-    const { separationOfDuties } = await this.laboratory.read(db);
-    const separation = await releaseSeparation(db, row.determinationIds, caller.id, separationOfDuties);
+    const separation = await releaseSeparation(db, row.determinationIds, caller.id);
     if (separation !== null) throw new Problem(403, 'certificate.own-work', separation);
   }
 

@@ -1,12 +1,11 @@
 /** Renders documents in a worker thread, so that the event loop stays free. */
-import { extname, join } from 'node:path';
 import { Injectable } from '@nestjs/common';
 import type { CertificateDocument, CertificateSnapshot } from '@strainwright/common/contract/certificates';
 import { Compute } from '../platform/compute';
 import type { RenderedDocuments, RenderJob } from './render.task';
 
 const LONGEST_MS = 120_000;
-const TASK = join(__dirname, `render.task${extname(__filename)}`);
+const TASK = require.resolve('./render.task');
 
 @Injectable()
 export class CertificateRenderer {

@@ -22,11 +22,16 @@ function conformity(snapshot: CertificateSnapshot): Content[] {
     ruledTable(
       [{ head: 'Specimen', width: 78 }, { head: 'Constant', width: 62 }, { head: 'Decision', width: 88 }, { head: 'Statement', width: '*' }, { head: 'Probability of conformity', width: 62, number: true, right: true }],
       snapshot.conformity.map((c) => [
-        { text: c.specimenMark, style: 'number' }, `${SYMBOLS[c.constant]}, ${c.basis}`, { text: c.conforms ? '● conforms' : '○ does not conform', bold: true }, c.statement, `${(100 * c.probability).toFixed(1)} %`,
+        { text: c.specimenMark, style: 'number' }, `${SYMBOLS[c.constant]}, ${c.basis}`, { text: c.conforms ? '● conforms' : '○ does not conform', bold: true }, c.statement, probabilityText(c.probability),
       ]),
     ),
     { style: 'note', text: `Decision rules: ${rules.map((r) => `${r}: ${RULES[r]}`).join('; ')}.` },
   ];
+}
+
+function probabilityText(p: number): string {
+  if (p > 0.9995) return '> 99.9 %';
+  return p < 0.0005 ? '< 0.1 %' : `${(100 * p).toFixed(1)} %`;
 }
 
 function supplied(snapshot: CertificateSnapshot): Content[] {
