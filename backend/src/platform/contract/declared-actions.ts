@@ -1,6 +1,6 @@
 import { INestApplicationContext, RequestMethod } from '@nestjs/common';
 import { METHOD_METADATA, PATH_METADATA } from '@nestjs/common/constants';
-import { DiscoveryService, MetadataScanner, Reflector } from '@nestjs/core';
+import { DiscoveryService, MetadataScanner } from '@nestjs/core';
 import type { Action } from '@strainwright/common/contract/permissions';
 import { ACTION_KEY } from '../../session/caller';
 
@@ -11,24 +11,30 @@ export interface DeclaredRoute {
   action: Action;
 }
 
+/** A class with its instance type unknown: Nest's own `Type`, as discovery hands it out. */
+type Controller = abstract new (...args: never[]) => unknown;
+
 /** Every registered route with its action. @throws Error naming each route that declares none: the server does not start then */
 export function declaredRoutes(app: INestApplicationContext): DeclaredRoute[] {
-  const discovery = app.get(DiscoveryService);
-  const reflector = app.get(Reflector);
+  const controllers = app.get(DiscoveryService).getControllers().flatMap(({ metatype }) => (typeof metatype === 'function' ? [metatype as Controller] : []));
+  return routesOf(controllers);
+}
+
+/** The routes of controller classes, read from their decorators. @throws Error naming each route that declares no action */
+export function routesOf(controllers: readonly Controller[]): DeclaredRoute[] {
   const scanner = new MetadataScanner();
   const routes: DeclaredRoute[] = [];
   const without: string[] = [];
-  for (const { instance, metatype } of discovery.getControllers()) {
-    if (typeof metatype !== 'function' || typeof instance !== 'object' || instance === null) continue;
-    const prototype = Object.getPrototypeOf(instance) as Record<string, unknown>;
+  for (const controller of controllers) {
+    const prototype = controller.prototype as Record<string, unknown>;
     for (const name of scanner.getAllMethodNames(prototype)) {
       const handler = prototype[name];
       if (typeof handler !== 'function') continue;
       const method = Reflect.getMetadata(METHOD_METADATA, handler) as RequestMethod | undefined;
       if (method === undefined) continue;
-      const action = reflector.getAllAndOverride<Action | undefined>(ACTION_KEY, [handler as () => unknown, metatype]);
-      if (action === undefined) without.push(`${metatype.name}.${name}`);
-      else for (const path of pathsOf(metatype, handler)) routes.push({ method: RequestMethod[method], path, action });
+      const action = (Reflect.getMetadata(ACTION_KEY, handler) ?? Reflect.getMetadata(ACTION_KEY, controller)) as Action | undefined;
+      if (action === undefined) without.push(`${controller.name}.${name}`);
+      else for (const path of pathsOf(controller, handler)) routes.push({ method: RequestMethod[method], path, action });
     }
   }
   if (without.length > 0) throw new Error(`These routes declare no action of contract/permissions: ${without.join(', ')}`);
