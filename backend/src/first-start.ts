@@ -2,6 +2,8 @@ import type { INestApplicationContext } from '@nestjs/common';
 import { eq } from 'drizzle-orm';
 import { Database } from './database/database';
 import { numberSeries, people } from './database/schema/people';
+import { DEMO_SIGN_INS } from './demo/people';
+import { seedDemo } from './demo/seed';
 import { FirstAdministrator } from './people/first-administrator';
 import { Config } from './platform/config';
 
@@ -23,13 +25,11 @@ export async function firstStart(app: INestApplicationContext): Promise<string[]
   const [made] = await database.db.select().from(numberSeries).where(eq(numberSeries.series, DEMO));
   if (made === undefined) return [];
   if (made.last < 2) return [`The demo was interrupted while it was made. To have all of it, stop, delete ${app.get(Config).dataFolder} and start again.`];
-  const { DEMO_SIGN_INS } = await import('./demo/people');
   return ['Demo sign-ins (everything in the demo is invented):', ...DEMO_SIGN_INS.map(({ who, email, password }) => `  ${who.padEnd(16)}  ${email.padEnd(40)}  ${password}`)];
 }
 
 async function makeDemo(app: INestApplicationContext): Promise<void> {
   const { db } = app.get(Database);
-  const { seedDemo } = await import('./demo/seed');
   await db.insert(numberSeries).values({ series: DEMO, last: 1 });
   await seedDemo(app);
   await db.update(numberSeries).set({ last: 2 }).where(eq(numberSeries.series, DEMO));

@@ -9,7 +9,8 @@ import { recordEntries } from '../database/schema/record';
 import { adoptions, fits, runs } from '../database/schema/runs';
 import { fitWorker } from '../fits/fit-worker';
 import { testApp, type TestApp } from '../testing/app';
-import { DEMO_SIGN_INS, seedDemo } from './seed';
+import { DEMO_SIGN_INS } from './people';
+import { seedDemo } from './seed';
 import { TRUTHS, type Truth } from './truths';
 
 let app: TestApp;

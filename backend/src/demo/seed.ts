@@ -10,8 +10,6 @@ import { granite } from './granite';
 import { aluminium, nickel } from './metals';
 import { makeCast, type Cast } from './people';
 
-export { DEMO_SIGN_INS } from './people';
-
 /** Fills an empty database. Needs whatever takes fits from the queue. */
 export async function seedDemo(app: INestApplicationContext): Promise<void> {
   const clock = app.get(Clock);
