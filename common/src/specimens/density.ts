@@ -22,9 +22,16 @@ export function waterDensity(kelvin: number): number {
   return 999.97495 * (1 - ((t - 3.983035) ** 2 * (t + 301.797)) / (522528.9 * (t + 69.34881)));
 }
 
+/** Why a weighing in water cannot be evaluated, or null. */
+export function waterRefusal(mass: Term, massInWater: Term, waterTemperature: Term): string | null {
+  if (!(mass.value > massInWater.value)) return `${(massInWater.value * 1000).toPrecision(5)} g in water, ${(mass.value * 1000).toPrecision(5)} g in air`;
+  const celsius = waterTemperature.value - 273.15;
+  return celsius >= 0 && celsius <= 40 ? null : `Water at ${celsius.toFixed(1)} °C`;
+}
+
 /**
  * Density by weighing in air and in water: ρ = (ρ_w − ρ_a) m/(m − m_w) + ρ_a, m the mass in air, m_w the apparent mass in
- * water (Archimedes; air buoyancy kept in the specimen, neglected on the balance weights, 0.002 % of ρ).
+ * water (Archimedes). Air buoyancy on the specimen is in the formula; that on the balance's weights divides out of m/(m − m_w).
  */
 export function densityInWater(model: Model, mass: Term, massInWater: Term, waterTemperature: Term): Term {
   const t = waterTemperature.value;
