@@ -1,18 +1,22 @@
 import { Injectable } from '@nestjs/common';
-import { compare, hash } from 'bcryptjs';
+import { Compute } from '../platform/compute';
 import { Config } from '../platform/config';
 import { invalid } from '../platform/problem';
 import { COMMON_PASSWORDS } from './common-passwords';
+import type { PasswordJob } from './password.task';
 
 /** bcrypt reads no more than this; a longer password would be cut off in silence. */
 const LONGEST_BYTES = 72;
+
+/** Many sign-ins at once wait for each other at most this long. */
+const PATIENCE_MS = 60_000;
 
 /** Passwords by NIST SP 800-63B: long enough, none of the common ones, nothing of the person's own name; no rules of composition, no expiry. */
 @Injectable()
 export class Passwords {
   private decoy: Promise<string> | undefined;
 
-  constructor(private readonly config: Config) {}
+  constructor(private readonly config: Config, private readonly compute: Compute) {}
 
   /** @throws Problem 422 at `path` when the password is too easy to guess */
   check(password: string, about: { name: string; email: string }, path: string): void {
@@ -28,18 +32,22 @@ export class Passwords {
   }
 
   hash(password: string): Promise<string> {
-    return hash(password, this.config.passwordCost);
+    return this.run<string>({ password, cost: this.config.passwordCost });
   }
 
   matches(password: string, passwordHash: string): Promise<boolean> {
-    return compare(password, passwordHash);
+    return this.run<boolean>({ password, against: passwordHash });
   }
 
   /** Takes as long as a comparison, so that time does not tell whether an account exists. */
   async pretend(password: string): Promise<false> {
-    this.decoy ??= hash('nobody signs in with this', this.config.passwordCost);
-    await compare(password, await this.decoy);
+    this.decoy ??= this.hash('nobody signs in with this');
+    await this.matches(password, await this.decoy);
     return false;
+  }
+
+  private run<Result>(job: PasswordJob): Promise<Result> {
+    return this.compute.run<Result>(require.resolve('./password.task'), job, () => {}, PATIENCE_MS);
   }
 }
 
