@@ -6,7 +6,7 @@
  */
 import type { Finding, FitResult, PulseDetail } from '../contract/result';
 import type { PulseRecord, PulseSettings } from '../contract/runs';
-import type { MaterialClass, Shape, Wave } from '../contract/vocabulary';
+import type { ConstantName, MaterialClass, Shape, Wave } from '../contract/vocabulary';
 import { constantsOfVelocities } from '../elasticity/constants-of-terms';
 import { EvaluationRefused } from '../findings/evaluation-refused';
 import { finding } from '../findings/findings';
@@ -42,7 +42,7 @@ interface WaveOutcome {
   readonly findings: readonly Finding[];
 }
 
-const ORIGIN = { E: 'derived', nu: 'derived', G: 'measured', K: 'derived' } as const;
+export const DYNAMIC_ORIGIN = { E: 'derived', nu: 'derived', G: 'measured', K: 'derived' } as const;
 
 function needed(term: Term | null, measured: SpecimenMeasurement, what: string): Term {
   if (term !== null) return term;
@@ -79,21 +79,25 @@ function instrumentFindings(input: PulseInput): Finding[] {
   return calibrationFindings(input.timeInstrument, input.performedAt);
 }
 
+export interface FittedPulse {
+  readonly constants: Record<ConstantName, Term>;
+  readonly detail: PulseDetail;
+  readonly findings: readonly Finding[];
+}
+
 /**
- * @returns the four dynamic constants with the run's detail and findings
+ * The four dynamic constants as terms of one model, with the run's detail and findings; `evaluatePulse` adds budget and trials.
  * @throws EvaluationRefused when a dimension, the mass or an arrival is missing, or nothing positive comes out
  */
-export function evaluatePulse(input: PulseInput, onProgress: (fraction: number) => void = () => undefined): FitResult {
+export function fitPulse(input: PulseInput, onProgress: (fraction: number) => void = () => undefined): FittedPulse {
   const { record, specimen } = input;
   const model = new Model();
   const measured = measureSpecimen(model, specimen.shape, specimen.materialClass, input.readings);
   const length = needed(measured.length, measured, 'the length along the path');
   const density = needed(measured.density, measured, 'the density (mass and all dimensions, or weighing in water)');
-  onProgress(0.05);
   const P = outcomeOf(model, input, 'P', () => -Infinity);
-  onProgress(0.2);
+  onProgress(0.5);
   const S = outcomeOf(model, input, 'S', (zeroS) => shearGate(Math.min(...P.readings), P.zero?.value ?? 0, zeroS));
-  onProgress(0.35);
   const [vP, vS] = [length.over(P.transit), length.over(S.transit)];
   const ratio = uncertaintyOf(vP.over(vS), '1');
   // At a ratio of 1 the formulas of E and ν divide by zero; below it S would outrun P.
@@ -105,10 +109,6 @@ export function evaluatePulse(input: PulseInput, onProgress: (fraction: number) 
     ...ratioFindings(ratio.value, ratio.standardUncertainty), ...velocityFindings(vP.value, specimen.materialClass),
     ...(wavelength === null ? [finding('FREQUENCY_MISSING', 'frequency', 'No nominal frequency')] : wavelengthFindings({ length: length.value, lateral: lateralSize(measured) }, wavelength.P, specimen.materialClass)),
   ];
-  const result = elasticResult({
-    basis: 'dynamic', constants: constantsOfVelocities(density, vP, vS), origin: ORIGIN, findings, seed: input.seed,
-    onProgress: (fraction) => onProgress(0.35 + 0.65 * fraction),
-  });
   const wave = (outcome: WaveOutcome, velocity: Term) => ({
     transitTime: uncertaintyOf(outcome.transit, 's'), zeroTime: uncertaintyOf(outcome.zero ?? model.constant(0), 's'), velocity: uncertaintyOf(velocity, 'm/s'), readings: [...outcome.readings],
   });
@@ -116,5 +116,12 @@ export function evaluatePulse(input: PulseInput, onProgress: (fraction: number) 
     kind: 'pulse', length: uncertaintyOf(length, 'm'), density: uncertaintyOf(density, 'kg/m³'), P: wave(P, vP), S: wave(S, vS),
     velocityRatio: ratio.value, wavelength, picks: [...P.arrivals.picks, ...S.arrivals.picks],
   };
+  return { constants: constantsOfVelocities(density, vP, vS), detail, findings };
+}
+
+/** @throws EvaluationRefused as `fitPulse` does */
+export function evaluatePulse(input: PulseInput, onProgress: (fraction: number) => void = () => undefined): FitResult {
+  const { constants, detail, findings } = fitPulse(input, (fraction) => onProgress(0.3 * fraction));
+  const result = elasticResult({ basis: 'dynamic', constants, origin: DYNAMIC_ORIGIN, findings, seed: input.seed, onProgress: (fraction) => onProgress(0.3 + 0.7 * fraction) });
   return { ...result, detail };
 }
