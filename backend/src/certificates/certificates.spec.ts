@@ -29,7 +29,7 @@ beforeAll(async () => {
   app.clock.set('2026-03-10T09:00:00Z');
   [quality, technician, analyst, reviewer] = [await app.person('quality manager'), await app.person('technician'), await app.person('analyst'), await app.person('reviewer')];
   workers = { technicianId: technician.id, analystId: analyst.id, reviewerId: reviewer.id };
-}, 60_000);
+}, 120_000);
 afterAll(() => app.close());
 
 const problemOf = (answer: { body: unknown }): Problem => answer.body as Problem;

@@ -38,7 +38,7 @@ beforeAll(async () => {
   withdrawn = await release(await draft([await order.determine('dynamic', { number: 9 })]));
   await quality.post(`/api/certificates/${withdrawn.id}/withdraw`, { reason: 'The specimens were mixed up' }).expect(200);
   for (const format of ['pdf', 'xlsx', 'json']) files.set(format, await fetchFile(current.id, format));
-}, 60_000);
+}, 120_000);
 afterAll(() => app.close());
 beforeEach(async () => {
   await app.nest.get<RedisConnections>(RedisConnections, { strict: false }).commands.flushall();
