@@ -7,7 +7,7 @@ import { cylinderReadings, logSpecimen, pulseRun, setUpLaboratory, stressStrainR
 import { removeFolder, startServer, type Server } from '../services/server';
 import { zipBomb } from './zip-bomb';
 
-jest.setTimeout(120_000);
+jest.setTimeout(180_000);
 
 let server: Server;
 let lab: Laboratory;
@@ -47,71 +47,73 @@ const fileRun = (name: string, bytes: Uint8Array | string) => () =>
   lab.technician.raw('POST', `/api/specimens/${logged.specimenId}/runs`, form({ name: 'run', json: stressStrainRun(lab, [{ purpose: 'record' }]) }, [{ name, bytes }]));
 
 const readingCases: Case[] = [
-  { what: 'an empty list of readings', send: () => lab.technician.raw('POST', readingsPath(), []), status: 400 },
-  { what: 'readings that are no list', send: () => lab.technician.raw('POST', readingsPath(), { value: 1 }), status: 400 },
+  { what: 'an empty list of readings', send: () => lab.technician.raw('POST', readingsPath(), []), status: 422 },
+  { what: 'readings that are no list', send: () => lab.technician.raw('POST', readingsPath(), { value: 1 }), status: 422 },
   { what: 'JSON cut short', send: () => lab.technician.raw('POST', readingsPath(), '[{"quantity":'), status: 400 },
-  { what: 'a unit nobody knows', send: reading({ unit: 'furlong' }), status: 400, field: '0.unit' },
-  { what: 'a mass unit for a length', send: reading({ unit: 'g' }), status: 400, field: '0.unit' },
-  { what: 'a negative length', send: reading({ value: -50 }), status: 400, field: '0.value' },
-  { what: 'a length of zero', send: reading({ value: 0 }), status: 400, field: '0.value' },
-  { what: 'a mass of zero (density of zero)', send: () => reading({ quantity: 'mass', unit: 'g', value: 0, instrumentId: lab.instruments.balance })(), status: 400, field: '0.value' },
-  { what: 'letters for a number', send: reading({ value: 'fifty' }), status: 400, field: '0.value' },
-  { what: 'a null value (NaN on the wire)', send: reading({ value: null }), status: 400, field: '0.value' },
-  { what: 'infinity', send: () => lab.technician.raw('POST', readingsPath(), `[{"quantity":"length","station":1,"value":1e999,"unit":"mm","instrumentId":"${lab.instruments.caliper}"}]`), status: 400, field: '0.value' },
-  { what: 'an unknown instrument', send: reading({ instrumentId: unknownId }), status: [400, 404, 422], field: '0.instrumentId' },
-  { what: 'an instrument id that is none', send: reading({ instrumentId: 'caliper' }), status: 400, field: '0.instrumentId' },
-  { what: 'a balance for a length', send: () => reading({ instrumentId: lab.instruments.balance })(), status: [400, 422], field: '0.instrumentId' },
-  { what: 'a quantity nobody knows', send: reading({ quantity: 'girth' }), status: 400, field: '0.quantity' },
-  { what: 'a diameter on station 0', send: reading({ quantity: 'diameter', station: 0 }), status: 400, field: '0.station' },
-  { what: 'a station of 1.5', send: reading({ station: 1.5 }), status: 400, field: '0.station' },
-  { what: 'a field nobody asked for', send: reading({ colour: 'blue' }), status: 400 },
-  { what: 'one bad reading among good ones', send: () => lab.technician.raw('POST', readingsPath(), [...cylinderReadings(lab, { length: 50, diameter: 25, mass: 66 }), { quantity: 'length', station: 9, value: -1, unit: 'mm', instrumentId: lab.instruments.caliper }]), status: 400, field: '7.value' },
-  { what: '501 readings at once', send: () => lab.technician.raw('POST', readingsPath(), Array.from({ length: 501 }, () => ({ quantity: 'length', station: 1, value: 50, unit: 'mm', instrumentId: lab.instruments.caliper }))), status: 400 },
+  { what: 'a unit nobody knows', send: reading({ unit: 'furlong' }), status: 422, field: '0.unit' },
+  { what: 'a mass unit for a length', send: reading({ unit: 'g' }), status: 422, field: '0.unit' },
+  { what: 'a negative length', send: reading({ value: -50 }), status: 422, field: '0.value' },
+  { what: 'a length of zero', send: reading({ value: 0 }), status: 422, field: '0.value' },
+  { what: 'a mass of zero (density of zero)', send: () => reading({ quantity: 'mass', unit: 'g', value: 0, instrumentId: lab.instruments.balance })(), status: 422, field: '0.value' },
+  { what: 'letters for a number', send: reading({ value: 'fifty' }), status: 422, field: '0.value' },
+  { what: 'a null value (NaN on the wire)', send: reading({ value: null }), status: 422, field: '0.value' },
+  { what: 'infinity', send: () => lab.technician.raw('POST', readingsPath(), `[{"quantity":"length","station":1,"value":1e999,"unit":"mm","instrumentId":"${lab.instruments.caliper}"}]`), status: 422, field: '0.value' },
+  { what: 'an unknown instrument', send: reading({ instrumentId: unknownId }), status: 422, field: '0.instrumentId' },
+  { what: 'an instrument id that is none', send: reading({ instrumentId: 'caliper' }), status: 422, field: '0.instrumentId' },
+  { what: 'a balance for a length', send: () => reading({ instrumentId: lab.instruments.balance })(), status: 422, field: '0.instrumentId' },
+  { what: 'a quantity nobody knows', send: reading({ quantity: 'girth' }), status: 422, field: '0.quantity' },
+  { what: 'a diameter on station 0', send: reading({ quantity: 'diameter', station: 0 }), status: 422, field: '0.station' },
+  { what: 'a station of 1.5', send: reading({ station: 1.5 }), status: 422, field: '0.station' },
+  { what: 'a field nobody asked for', send: reading({ colour: 'blue' }), status: 422 },
+  { what: 'one bad reading among good ones', send: () => lab.technician.raw('POST', readingsPath(), [...cylinderReadings(lab, { length: 50, diameter: 25, mass: 66 }), { quantity: 'length', station: 9, value: -1, unit: 'mm', instrumentId: lab.instruments.caliper }]), status: 422, field: '7.value' },
+  { what: '501 readings at once', send: () => lab.technician.raw('POST', readingsPath(), Array.from({ length: 501 }, () => ({ quantity: 'length', station: 1, value: 50, unit: 'mm', instrumentId: lab.instruments.caliper }))), status: 422 },
   { what: 'a specimen that is not there', send: () => lab.technician.raw('POST', `/api/specimens/${unknownId}/readings`, cylinderReadings(lab, { length: 50, diameter: 25, mass: 66 })), status: 404 },
-  { what: 'a specimen id that is none', send: () => lab.technician.raw('POST', '/api/specimens/7/readings', cylinderReadings(lab, { length: 50, diameter: 25, mass: 66 })), status: [400, 404] },
+  { what: 'a specimen id that is none', send: () => lab.technician.raw('POST', '/api/specimens/7/readings', cylinderReadings(lab, { length: 50, diameter: 25, mass: 66 })), status: 404 },
 ];
 
 const nounCases: Case[] = [
-  { what: 'a mark of 10 000 characters', send: sample({ mark: 'M'.repeat(10_000) }), status: 400, field: 'mark' },
-  { what: 'a mark with a line break', send: sample({ mark: 'A\nB' }), status: 400, field: 'mark' },
-  { what: 'a day that is none', send: sample({ receivedOn: '2026-02-31' }), status: 400, field: 'receivedOn' },
-  { what: 'a material class nobody knows', send: sample({ materialClass: 'cheese' }), status: 400, field: 'materialClass' },
-  { what: 'an empty material', send: sample({ material: '   ' }), status: 400, field: 'material' },
-  { what: 'a shape nobody knows', send: () => lab.technician.raw('POST', `/api/samples/${logged.sampleId}/specimens`, { shape: 'sphere' }), status: 400, field: 'shape' },
-  { what: 'a thousand specimens at once', send: () => lab.technician.raw('POST', `/api/samples/${logged.sampleId}/specimens`, { shape: 'cube', count: 1000 }), status: 400, field: 'count' },
-  { what: 'an order that wants no constant', send: order({ constantsWanted: [] }), status: 400, field: 'constantsWanted' },
-  { what: 'a lower limit above the upper', send: order({ limits: [{ constant: 'E', lower: 2e9, upper: 1e9, rule: 'simple' }] }), status: 400, field: 'limits.0.upper' },
-  { what: 'a limit that limits nothing', send: order({ limits: [{ constant: 'E', lower: null, upper: null, rule: 'simple' }] }), status: 400, field: 'limits.0.lower' },
-  { what: 'an order on behalf of a customer that is not there', send: () => lab.qualityManager.raw('POST', '/api/orders', { customerId: unknownId, title: 'T', materialDescription: 'M', constantsWanted: ['E'], kindsOfRun: ['pulse'] }), status: [400, 404, 422], field: 'customerId' },
+  { what: 'a mark of 10 000 characters', send: sample({ mark: 'M'.repeat(10_000) }), status: 422, field: 'mark' },
+  { what: 'a mark with a line break', send: sample({ mark: 'A\nB' }), status: 422, field: 'mark' },
+  { what: 'a day that is none', send: sample({ receivedOn: '2026-02-31' }), status: 422, field: 'receivedOn' },
+  { what: 'a material class nobody knows', send: sample({ materialClass: 'cheese' }), status: 422, field: 'materialClass' },
+  { what: 'an empty material', send: sample({ material: '   ' }), status: 422, field: 'material' },
+  { what: 'a shape nobody knows', send: () => lab.technician.raw('POST', `/api/samples/${logged.sampleId}/specimens`, { shape: 'sphere' }), status: 422, field: 'shape' },
+  { what: 'a thousand specimens at once', send: () => lab.technician.raw('POST', `/api/samples/${logged.sampleId}/specimens`, { shape: 'cube', count: 1000 }), status: 422, field: 'count' },
+  { what: 'an order that wants no constant', send: order({ constantsWanted: [] }), status: 422, field: 'constantsWanted' },
+  { what: 'a lower limit above the upper', send: order({ limits: [{ constant: 'E', lower: 2e9, upper: 1e9, rule: 'simple' }] }), status: 422, field: 'limits.0.upper' },
+  { what: 'a limit that limits nothing', send: order({ limits: [{ constant: 'E', lower: null, upper: null, rule: 'simple' }] }), status: 422, field: 'limits.0.lower' },
+  { what: 'an order on behalf of a customer that is not there', send: () => lab.qualityManager.raw('POST', '/api/orders', { customerId: unknownId, title: 'T', materialDescription: 'M', constantsWanted: ['E'], kindsOfRun: ['pulse'] }), status: 422, field: 'customerId' },
   { what: 'an order opened twice', send: () => lab.technician.raw('POST', `/api/orders/${logged.orderId}/open`, {}), status: 409 },
   { what: 'a stale version', send: () => lab.administrator.raw('PATCH', `/api/customers/${lab.customerId}`, { name: 'New name', version: 0 }), status: 409 },
   { what: 'a sort by a column that is none', send: () => lab.technician.raw('GET', '/api/specimens?sort=passwordHash'), status: 400, field: 'sort' },
   { what: 'a page of a million rows', send: () => lab.technician.raw('GET', '/api/specimens?pageSize=1000000'), status: 400, field: 'pageSize' },
-  { what: 'a calibration due before it was made', send: () => lab.qualityManager.raw('POST', `/api/instruments/${lab.instruments.caliper}/calibrations`, { calibratedOn: '2026-05-01', dueOn: '2026-04-01', certificate: 'C', laboratory: 'L', relative: false, expandedUncertainty: 0.01, coverageFactor: 2, correction: 0 }), status: 400, field: 'dueOn' },
-  { what: 'an e-mail address that is none', send: () => new Client(server.url).raw('POST', '/api/session', { email: 'nobody', password: 'x' }), status: 400, field: 'email' },
-  { what: 'a short password', send: () => lab.administrator.raw('POST', '/api/people', { name: 'N', email: 'n@example.org', roles: ['analyst'], customerId: null, password: 'short' }), status: 400, field: 'password' },
-  { what: 'a common password', send: () => lab.administrator.raw('POST', '/api/people', { name: 'N', email: 'n@example.org', roles: ['analyst'], customerId: null, password: 'passwordpassword' }), status: [400, 422], field: 'password' },
+  { what: 'a calibration due before it was made', send: () => lab.qualityManager.raw('POST', `/api/instruments/${lab.instruments.caliper}/calibrations`, { calibratedOn: '2026-05-01', dueOn: '2026-04-01', certificate: 'C', laboratory: 'L', relative: false, expandedUncertainty: 0.01, coverageFactor: 2, correction: 0 }), status: 422, field: 'dueOn' },
+  { what: 'an e-mail address that is none', send: () => new Client(server.url).raw('POST', '/api/session', { email: 'nobody', password: 'x' }), status: 422, field: 'email' },
+  { what: 'a short password', send: () => lab.administrator.raw('POST', '/api/people', { name: 'N', email: 'n@example.org', roles: ['analyst'], customerId: null, password: 'short' }), status: 422, field: 'password' },
+  { what: 'a common password', send: () => lab.administrator.raw('POST', '/api/people', { name: 'N', email: 'n@example.org', roles: ['analyst'], customerId: null, password: 'passwordpassword' }), status: 422, field: 'password' },
 ];
 
 const runCases: Case[] = [
-  { what: 'a run by a method that is not there', send: typedRun((run) => ({ ...run, methodId: unknownId })), status: [400, 404, 422], field: 'methodId' },
-  { what: 'a pulse run by a stress–strain method', send: typedRun((run) => ({ ...run, methodId: lab.methods.stressStrain })), status: [400, 422], field: 'methodId' },
-  { what: 'a transit time of zero', send: typedRun((run) => ({ ...run, record: { ...run.record, P: { ...run.record.P, readings: [0] } } })), status: 400, field: 'record.P.readings.0' },
-  { what: 'transit times in µs sent as seconds', send: typedRun((run) => ({ ...run, record: { ...run.record, P: { ...run.record.P, readings: [8.5] } } })), status: 400, field: 'record.P.readings.0' },
+  { what: 'a run by a method that is not there', send: typedRun((run) => ({ ...run, methodId: unknownId })), status: 422, field: 'methodId' },
+  { what: 'a pulse run by a stress–strain method', send: typedRun((run) => ({ ...run, methodId: lab.methods.stressStrain })), status: 422, field: 'methodId' },
+  { what: 'a transit time of zero', send: typedRun((run) => ({ ...run, record: { ...run.record, P: { ...run.record.P, readings: [0] } } })), status: 422, field: 'record.P.readings.0' },
+  { what: 'transit times in µs sent as seconds', send: typedRun((run) => ({ ...run, record: { ...run.record, P: { ...run.record.P, readings: [8.5] } } })), status: 422, field: 'record.P.readings.0' },
   { what: 'a run without its JSON part', send: () => lab.technician.raw('POST', `/api/specimens/${logged.specimenId}/runs`, new FormData()), status: 400 },
   { what: 'a run whose JSON part is broken', send: () => { const data = new FormData(); data.set('run', '{'); return lab.technician.raw('POST', `/api/specimens/${logged.specimenId}/runs`, data); }, status: 400 },
-  { what: 'a purpose named for a file that did not come', send: () => lab.technician.raw('POST', `/api/specimens/${logged.specimenId}/runs`, form({ name: 'run', json: stressStrainRun(lab, [{ purpose: 'record' }]) }, [])), status: [400, 422] },
-  { what: 'an empty file', send: fileRun('empty.csv', ''), status: [400, 422], field: 'files.0' },
-  { what: 'a picture', send: fileRun('photo.csv', new Uint8Array([0x89, 0x50, 0x4e, 0x47, 0x0d, 0x0a, 0x1a, 0x0a, 0, 0, 0, 13, 0, 1, 2, 3, 0xff, 0xfe])), status: [400, 422], field: 'files.0' },
-  { what: 'a file of one column', send: fileRun('one.csv', `strain\n${Array.from({ length: 50 }, (_, i) => i).join('\n')}\n`), status: [400, 422], field: 'files.0' },
-  { what: 'a file of headings only', send: fileRun('headings.csv', 'time,force,strain\ns,kN,%\n'), status: [400, 422], field: 'files.0' },
-  { what: 'prose', send: fileRun('letter.txt', 'Dear laboratory,\nplease find no data here.\n'), status: [400, 422], field: 'files.0' },
-  { what: 'a zip bomb called XLSX', send: fileRun('bomb.xlsx', zipBomb(deflateRawSync)), status: [400, 413, 422], field: 'files.0' },
-  { what: 'a broken workbook', send: fileRun('broken.xlsx', new Uint8Array([0x50, 0x4b, 3, 4, 1, 2, 3, 4, 5, 6, 7, 8, 9])), status: [400, 422], field: 'files.0' },
+  { what: 'a purpose named for a file that did not come', send: () => lab.technician.raw('POST', `/api/specimens/${logged.specimenId}/runs`, form({ name: 'run', json: stressStrainRun(lab, [{ purpose: 'record' }]) }, [])), status: 422 },
+  { what: 'an empty file', send: fileRun('empty.csv', ''), status: 422, field: 'files.0' },
+  { what: 'a picture', send: fileRun('photo.csv', new Uint8Array([0x89, 0x50, 0x4e, 0x47, 0x0d, 0x0a, 0x1a, 0x0a, 0, 0, 0, 13, 0, 1, 2, 3, 0xff, 0xfe])), status: 422, field: 'files.0' },
+  { what: 'a file of one column', send: fileRun('one.csv', `strain\n${Array.from({ length: 50 }, (_, i) => i).join('\n')}\n`), status: 422, field: 'files.0' },
+  { what: 'a file whose numbers are all NaN', send: fileRun('nan.csv', `time (s),force (kN),strain (%)\n${'NaN,NaN,NaN\n'.repeat(50)}`), status: 422, field: 'files.0' },
+  { what: 'a file of letters where numbers belong', send: fileRun('letters.csv', `time (s),force (kN),strain (%)\n${'1.O,2l.5,O.3\n'.repeat(50)}`), status: 422, field: 'files.0' },
+  { what: 'a file of headings only', send: fileRun('headings.csv', 'time,force,strain\ns,kN,%\n'), status: 422, field: 'files.0' },
+  { what: 'prose', send: fileRun('letter.txt', 'Dear laboratory,\nplease find no data here.\n'), status: 422, field: 'files.0' },
+  { what: 'a zip bomb called XLSX', send: fileRun('bomb.xlsx', zipBomb(deflateRawSync)), status: [413, 422], field: 'files.0' },
+  { what: 'a broken workbook', send: fileRun('broken.xlsx', new Uint8Array([0x50, 0x4b, 3, 4, 1, 2, 3, 4, 5, 6, 7, 8, 9])), status: 422, field: 'files.0' },
   { what: 'settings of the other kind', send: async () => {
     const run = await lab.technician.upload<{ id: string }>(`/api/specimens/${logged.specimenId}/runs`, { name: 'run', json: pulseRun(lab, times) }, []);
     return lab.analyst.raw('POST', `/api/runs/${run.id}/fits`, { settings: { kind: 'stress-strain', region: { by: 'automatic' } } });
-  }, status: [400, 422], field: 'settings.kind' },
+  }, status: 422, field: 'settings.kind' },
   { what: 'a fit of a run that is not there', send: () => lab.analyst.raw('POST', `/api/runs/${unknownId}/fits`, { settings: { kind: 'pulse' } }), status: 404 },
 ];
 
@@ -127,7 +129,7 @@ describe('bad input', () => {
     expect([status].flat()).toContain(answer.status);
     // The status says that this is a problem document; its fields are what is checked.
     const problem = answer.body as Problem;
-    expect(problem.code).toMatch(/^[a-z0-9-]+$/);
+    expect(problem.code).toMatch(/^[a-z0-9]+([.-][a-z0-9]+)*$/);
     expect(problem.detail.length).toBeGreaterThan(5);
     expect(problem.detail).not.toMatch(/select |insert |at .*\.ts|ECONN|undefined/i);
     if (field !== undefined) expect(problem.errors?.map((e) => e.path)).toContain(field);
@@ -139,6 +141,12 @@ describe('bad input', () => {
     expect((await lab.technician.get<Order>(`/api/orders/${logged.orderId}`)).specimens).toHaveLength(1);
     expect((await lab.reviewer.get<{ intact: boolean }>('/api/record/verify')).intact).toBe(true);
     expect((await new Client(server.url).raw('GET', '/api/health')).status).toBe(200);
+  });
+
+  it('keeps a formula in a customer’s name as text', async () => {
+    const name = '=HYPERLINK("https://elsewhere.example";"Open")';
+    const { id } = await lab.administrator.post<{ id: string }>('/api/customers', { name, address: '1 Row', contactEmail: 'a@row.example' });
+    expect((await lab.administrator.get<{ name: string }>(`/api/customers/${id}`)).name).toBe(name);
   });
 
   it('keeps a script in a mark as text', async () => {

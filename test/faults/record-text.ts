@@ -2,11 +2,13 @@
 export function recordText(rows: number): string {
   const area = (Math.PI * 0.02 ** 2) / 4;
   const lines = ['Time (s),Load (kN),Axial strain (µε),Transverse strain (µε)'];
+  // Taken out of the loop: a global costs a hundred times as much in a test's sandbox.
+  const { imul } = Math;
   let state = 12345;
   const noise = () => {
     let sum = -6;
     for (let i = 0; i < 12; i += 1) {
-      state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
+      state = (imul(state, 1664525) + 1013904223) >>> 0;
       sum += state / 2 ** 32;
     }
     return sum;

@@ -47,14 +47,14 @@ export async function setUpLaboratory(url: string): Promise<Laboratory> {
   const administrator = await Client.signIn(url, ADMINISTRATOR.email, ADMINISTRATOR.password);
   const customer = await administrator.post<HasId>('/api/customers', { name: 'Tarn Quarries', address: '1 Quarry Road', contactEmail: 'office@tarn.example' });
   const other = await administrator.post<HasId>('/api/customers', { name: 'Elm Castings', address: '2 Foundry Lane', contactEmail: 'office@elm.example' });
-  const qualityManager = await person(administrator, url, 'Quinn Manager', ['quality manager']);
-  const [technician, analyst, reviewer, customerPerson, otherPerson] = [
-    await person(administrator, url, 'Terry Technician', ['technician']),
-    await person(administrator, url, 'Ana Analyst', ['analyst']),
-    await person(administrator, url, 'Robin Reviewer', ['reviewer']),
-    await person(administrator, url, 'Casey Customer', ['customer'], customer.id),
-    await person(administrator, url, 'Otis Other', ['customer'], other.id),
-  ];
+  const [qualityManager, technician, analyst, reviewer, customerPerson, otherPerson] = await Promise.all([
+    person(administrator, url, 'Quinn Manager', ['quality manager']),
+    person(administrator, url, 'Terry Technician', ['technician']),
+    person(administrator, url, 'Ana Analyst', ['analyst']),
+    person(administrator, url, 'Robin Reviewer', ['reviewer']),
+    person(administrator, url, 'Casey Customer', ['customer'], customer.id),
+    person(administrator, url, 'Otis Other', ['customer'], other.id),
+  ]);
   const instruments = {
     caliper: await instrument(qualityManager, { name: 'Caliper 1', kind: 'caliper', unit: 'mm', resolution: 0.01, U: 0.02 }),
     balance: await instrument(qualityManager, { name: 'Balance 1', kind: 'balance', unit: 'g', resolution: 0.01, U: 0.04 }),

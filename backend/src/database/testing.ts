@@ -24,7 +24,8 @@ async function inMemory(): Promise<Database> {
   return embedded(await PGlite.create({ loadDataDir: new Blob([new Uint8Array(readFileSync(image))]) }));
 }
 
-async function templateImage(): Promise<string> {
+/** The files of a migrated, empty database as a tar archive. */
+export async function templateImage(): Promise<string> {
   const path = join(CACHE, `database-${migrationsKey()}.tar`);
   if (existsSync(path)) return path;
   const { PGlite } = await import('@electric-sql/pglite');
