@@ -25,7 +25,9 @@ export async function firstStart(app: INestApplicationContext): Promise<string[]
   const [made] = await database.db.select().from(numberSeries).where(eq(numberSeries.series, DEMO));
   if (made === undefined) return [];
   if (made.last < 2) return [`The demo was interrupted while it was made. To have all of it, stop, delete ${app.get(Config).dataFolder} and start again.`];
-  return ['Demo sign-ins (everything in the demo is invented):', ...DEMO_SIGN_INS.map(({ who, email, password }) => `  ${who.padEnd(16)}  ${email.padEnd(40)}  ${password}`)];
+  const wide = (text: (row: (typeof DEMO_SIGN_INS)[number]) => string) => Math.max(...DEMO_SIGN_INS.map((row) => text(row).length));
+  const [whoWide, emailWide] = [wide((row) => row.who), wide((row) => row.email)];
+  return ['Demo sign-ins (everything in the demo is invented):', ...DEMO_SIGN_INS.map(({ who, email, password }) => `  ${who.padEnd(whoWide)}  ${email.padEnd(emailWide)}  ${password}`)];
 }
 
 async function makeDemo(app: INestApplicationContext): Promise<void> {

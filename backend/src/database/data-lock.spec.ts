@@ -2,9 +2,10 @@ import { ChildProcess, spawn } from 'node:child_process';
 import { mkdtempSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import { hostname, tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { pathToFileURL } from 'node:url';
 import { DataFolderInUse, DataLock } from './data-lock';
 
-const HOOK = join(__dirname, '..', '..', 'typescript-hook.cjs');
+const HOOK = pathToFileURL(join(__dirname, '..', '..', 'typescript-hook.mjs')).href;
 const PROGRAM = `
   const { DataLock } = require(${JSON.stringify(join(__dirname, 'data-lock.ts'))});
   try { DataLock.acquire(process.argv[1]); process.send('held'); setInterval(() => {}, 1000); }
@@ -23,7 +24,7 @@ describe('DataLock', () => {
 
   /** A process of its own that takes the lock, and what came of it. */
   const contender = async (): Promise<{ child: ChildProcess; said: unknown }> => {
-    const child = spawn(process.execPath, ['--require', HOOK, '-e', PROGRAM, folder], { stdio: ['ignore', 'inherit', 'inherit', 'ipc'] });
+    const child = spawn(process.execPath, ['--import', HOOK, '-e', PROGRAM, folder], { stdio: ['ignore', 'inherit', 'inherit', 'ipc'] });
     children.push(child);
     const said = await new Promise((resolve) => child.once('message', resolve));
     return { child, said };

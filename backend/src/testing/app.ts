@@ -1,6 +1,7 @@
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { pathToFileURL } from 'node:url';
 import type { DynamicModule, Type } from '@nestjs/common';
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import { Test } from '@nestjs/testing';
@@ -59,12 +60,13 @@ export interface TestApp {
   close(): Promise<void>;
 }
 
+const TYPESCRIPT_HOOK = pathToFileURL(join(__dirname, '..', '..', 'typescript-hook.mjs')).href;
 const PASSWORD = 'a long enough phrase';
 
 /** The whole application over HTTP on a database and a data folder of its own; only the clock is a test's. */
 export async function testApp(options: { worker?: DynamicModule; env?: Record<string, string>; database?: Database } = {}): Promise<TestApp> {
   const folder = mkdtempSync(join(tmpdir(), 'strainwright-'));
-  const config = new Config({ NODE_ENV: 'test', STRAINWRIGHT_DATA: folder, LOG_LEVEL: 'silent', STRAINWRIGHT_DEMO: 'off', ...options.env }, ['--require', join(__dirname, '..', '..', 'typescript-hook.cjs')]);
+  const config = new Config({ NODE_ENV: 'test', STRAINWRIGHT_DATA: folder, LOG_LEVEL: 'silent', STRAINWRIGHT_DEMO: 'off', ...options.env }, ['--import', TYPESCRIPT_HOOK]);
   const database = options.database ?? (await testDatabase());
   const clock = new TestClock();
   const module = await Test.createTestingModule({ imports: [AppModule.with(config, database, options.worker)] }).overrideProvider(Clock).useValue(clock).compile();

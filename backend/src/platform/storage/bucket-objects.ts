@@ -61,7 +61,9 @@ export class BucketObjects implements Objects {
     const { S3Client, CreateBucketCommand } = await import('@aws-sdk/client-s3');
     const { endpoint, region, bucket, accessKeyId, secretAccessKey } = this.settings;
     const credentials = accessKeyId !== undefined && secretAccessKey !== undefined ? { accessKeyId, secretAccessKey } : undefined;
-    const client = new S3Client({ endpoint, region, forcePathStyle: true, ...(credentials === undefined ? {} : { credentials }) });
+    // Stores that only imitate S3 do not all know its newer checksums; files are known by their SHA-256 anyway.
+    const plain = { requestChecksumCalculation: 'WHEN_REQUIRED', responseChecksumValidation: 'WHEN_REQUIRED' } as const;
+    const client = new S3Client({ endpoint, region, forcePathStyle: true, ...plain, ...(credentials === undefined ? {} : { credentials }) });
     try {
       await client.send(new CreateBucketCommand({ Bucket: bucket }));
     } catch (error) {
