@@ -49,9 +49,13 @@ export function Plot({ title, x, series, xLabel, yLabel, summary, window, height
   const holder = useRef<HTMLDivElement>(null);
   const plot = useRef<uPlot | null>(null);
   const latest = useRef(window);
-  latest.current = window;
   const theme = useTheme();
   const [scheme, setScheme] = useState(0);
+
+  useEffect(() => {
+    latest.current = window;
+    plot.current?.redraw(false);
+  }, [window]);
 
   useEffect(() => {
     const watcher = new MutationObserver(() => setScheme((n) => n + 1));
@@ -79,8 +83,6 @@ export function Plot({ title, x, series, xLabel, yLabel, summary, window, height
       plot.current = null;
     };
   }, [x, series, xLabel, yLabel, height, points, scheme, theme]);
-
-  useEffect(() => plot.current?.redraw(false), [window?.from, window?.to]);
 
   const drag = (event: React.PointerEvent) => {
     const u = plot.current;
