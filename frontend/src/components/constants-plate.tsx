@@ -45,7 +45,7 @@ function Corner({ constants, name }: { constants: Constants; name: ConstantName 
         <Typography component="span" sx={{ fontSize: '1.25rem', fontWeight: 500, fontStyle: 'italic' }}>{SYMBOLS[name]}</Typography>
       </Box>
       <Box sx={{ fontSize: { xs: '0.875rem', sm: '1.0625rem' }, bgcolor: 'background.paper' }}><Measured constant={c} /></Box>
-      <Typography variant="caption" color="text.secondary" sx={{ bgcolor: 'background.paper' }}>{NAMES[name]}{c === null ? '' : `, ${c.origin}`}</Typography>
+      <Typography variant="caption" color="textSecondary" sx={{ bgcolor: 'background.paper' }}>{NAMES[name]}{c === null ? '' : `, ${c.origin}`}</Typography>
     </Box>
   );
 }
@@ -68,7 +68,7 @@ export function ConstantsPlate({ constants, basis, agreements = [] }: { constant
           {CORNERS.map((name) => <Corner key={name} name={name} constants={constants} />)}
         </Box>
       </Box>
-      <Typography component="figcaption" variant="caption" color="text.secondary">
+      <Typography component="figcaption" variant="caption" color="textSecondary">
         {basis === 'static' ? 'Static' : 'Dynamic'}. ± expanded uncertainty, 95 %. Solid corner: measured; outlined: derived.
         <span style={visuallyHidden}>{plateText(constants, basis)}</span>
       </Typography>

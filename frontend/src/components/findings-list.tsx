@@ -24,7 +24,7 @@ export function FindingsList({ findings, title = 'Findings', beside }: { finding
         {sorted.map((f, i) => (
           <Box component="li" key={`${f.code} ${f.subject} ${i}`} sx={{ borderLeft: '3px solid', borderColor: f.severity === 'stop' ? 'error.main' : f.severity === 'warn' ? 'warning.main' : 'info.main', pl: 1.5 }}>
             <StateWord state={f.severity} /> <strong>{f.seen}</strong>
-            <Typography variant="body2" color="text.secondary">{f.why}. {f.action}.</Typography>
+            <Typography variant="body2" color="textSecondary">{f.why}. {f.action}.</Typography>
             {beside?.(f)}
           </Box>
         ))}

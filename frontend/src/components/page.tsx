@@ -49,7 +49,7 @@ export function Facts({ facts }: { facts: readonly (readonly [string, ReactNode]
     <Box component="dl" sx={{ display: 'grid', gridTemplateColumns: { xs: '1fr', sm: 'max-content 1fr' }, columnGap: 3, rowGap: 0.5, m: 0 }}>
       {facts.map(([name, value]) => (
         <Box key={name} sx={{ display: 'contents' }}>
-          <Typography component="dt" color="text.secondary">{name}</Typography>
+          <Typography component="dt" color="textSecondary">{name}</Typography>
           <Typography component="dd" sx={{ m: 0, overflowWrap: 'anywhere', mb: { xs: 1, sm: 0 } }}>{value}</Typography>
         </Box>
       ))}

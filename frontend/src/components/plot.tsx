@@ -133,7 +133,7 @@ export function Plot({ title, x, series, xLabel, yLabel, summary, window, height
         </Stack>
       )}
       <Stack direction="row" component="figcaption" spacing={2} sx={{ alignItems: 'center', mt: 0.5 }}>
-        <Typography variant="caption" color="text.secondary">{summary}</Typography>
+        <Typography variant="caption" color="textSecondary">{summary}</Typography>
         <Button size="small" variant="text" onClick={save} className="no-print" sx={{ ml: 'auto !important' }}>Save as picture</Button>
       </Stack>
     </Box>

@@ -30,7 +30,7 @@ export function EmptyState({ title, children }: { title: string; children?: Reac
   return (
     <Box sx={{ py: 4, px: 2, textAlign: 'center', border: '1px dashed', borderColor: 'divider', borderRadius: 1 }}>
       <Typography variant="h3" component="p">{title}</Typography>
-      {children !== undefined && <Typography color="text.secondary" component="div">{children}</Typography>}
+      {children !== undefined && <Typography color="textSecondary" component="div">{children}</Typography>}
     </Box>
   );
 }

@@ -18,7 +18,7 @@ export function AdmissibleRegion({ constants }: { constants: ElasticResult['cons
         <Box sx={{ position: 'absolute', bottom: 0, height: 22, width: 2, bgcolor: 'primary.main', left: place(nu.value) }} />
       </Box>
       <Box sx={{ position: 'relative', height: 22 }}>{MARKS.map((m) => <Typography key={m} variant="caption" className="mono" sx={{ position: 'absolute', left: place(m), transform: 'translateX(-50%)' }}>{String(m).replace('-', '−')}</Typography>)}</Box>
-      <Typography variant="caption" color="text.secondary">{text}</Typography>
+      <Typography variant="caption" color="textSecondary">{text}</Typography>
     </Box>
   );
 }

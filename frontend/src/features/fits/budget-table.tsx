@@ -22,7 +22,7 @@ export function BudgetTable({ result }: { result: ElasticResult }) {
         ...CONSTANTS.map((c) => ({ title: `of ${SYMBOLS[c]}`, cell: (l: ElasticResult['budget'][number]) => share(l.contribution[c]), numeric: true })),
         { title: 'Source', cell: (l) => l.source },
       ]} />
-      <Typography variant="body2" color="text.secondary" sx={{ mt: 1 }}>
+      <Typography variant="body2" color="textSecondary" sx={{ mt: 1 }}>
         Monte Carlo, {check.trials.toLocaleString('en-GB')} trials, seed <span className="mono">{check.seed}</span>: the first-order intervals {check.agrees ? 'are confirmed' : 'are not confirmed; the Monte Carlo intervals are the ones to state'}. Correlations:{' '}
         {CONSTANTS.flatMap((a, i) => CONSTANTS.slice(i + 1).map((b, k) => {
           const r = result.correlation[i]?.[i + 1 + k];

@@ -9,7 +9,6 @@ import { FindingsList } from '../../components/findings-list';
 import { MeasuredQuantity, Numeral } from '../../components/measured';
 import { Facts, Section } from '../../components/page';
 import { Plot } from '../../components/plot';
-import { Loaded } from '../../components/states';
 import { PlainTable } from '../../components/table';
 import { BudgetTable } from './budget-table';
 
@@ -20,11 +19,8 @@ export function useFit(id: string) {
   return useApi(fitSchema, `/api/fits/${id}`, { every: (fit) => (isOpen(fit) ? 700 : false) });
 }
 
-export function FitResultView({ fitId }: { fitId: string }) {
-  return <Loaded query={useFit(fitId)}>{(fit) => <FitView fit={fit} />}</Loaded>;
-}
-
-export function FitView({ fit }: { fit: Fit }) {
+/** What a page opens on: progress, the constants with what is wrong, or why there are none. */
+export function FitAnswer({ fit }: { fit: Fit }) {
   if (isOpen(fit)) {
     return (
       <Box role="status">
@@ -36,14 +32,23 @@ export function FitView({ fit }: { fit: Fit }) {
   if (fit.result === null) {
     return <Stack spacing={2}><Alert severity="error"><strong>Fit {fit.number} gave no result.</strong> {fit.error}</Alert>{fit.findingsWhenRefused.length > 0 && <FindingsList findings={fit.findingsWhenRefused} />}</Stack>;
   }
+  return (
+    <Box sx={{ display: 'flex', flexWrap: 'wrap', gap: 3, alignItems: 'flex-start' }}>
+      <Box sx={{ flex: '1 1 360px', maxWidth: 560 }}><ConstantsPlate constants={fit.result.constants} basis={fit.result.basis} /></Box>
+      <Box sx={{ flex: '1 1 320px', minWidth: 0 }}><FindingsList findings={fit.result.findings} /></Box>
+    </Box>
+  );
+}
+
+/** How the constants came about. */
+export function FitEvidence({ fit }: { fit: Fit }) {
+  if (fit.result === null) return null;
   const { detail } = fit.result;
   return (
     <Stack spacing={3}>
-      <ConstantsPlate constants={fit.result.constants} basis={fit.result.basis} />
-      <FindingsList findings={fit.result.findings} />
       {detail.kind === 'pulse' ? <PulseEvidence detail={detail} /> : <StressStrainEvidence detail={detail} />}
       <BudgetTable result={fit.result} />
-      <Typography variant="caption" color="text.secondary" sx={{ overflowWrap: 'anywhere' }}>Software {fit.softwareVersion}; SHA-256 of all inputs <span className="mono">{fit.inputsSha256}</span></Typography>
+      <Typography variant="caption" color="textSecondary" sx={{ overflowWrap: 'anywhere' }}>Software {fit.softwareVersion}; SHA-256 of all inputs <span className="mono">{fit.inputsSha256}</span></Typography>
     </Stack>
   );
 }

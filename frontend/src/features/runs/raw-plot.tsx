@@ -2,7 +2,7 @@
 import { runChannels, type Run } from '@strainwright/common/contract/run-answers';
 import type { PulseSettings } from '@strainwright/common/contract/runs';
 import type { FitResult } from '@strainwright/common/contract/result';
-import { Alert, Button, Stack } from '@mui/material';
+import { Alert, Button, MenuItem, Stack, TextField } from '@mui/material';
 import { useMemo, useState } from 'react';
 import type { z } from 'zod';
 import { useApi } from '../../api/queries';
@@ -72,8 +72,20 @@ function Waveform({ file, result, onArrival }: { file: FileChannels; result: Fit
   const wave = file.purpose.endsWith('P') ? 'P' : 'S';
   const clock = valuesOf(file, 'time');
   const traces = file.series.filter((s) => s.channel === 'trace');
+  const [chosen, setChosen] = useState(0);
   const x = useMemo(() => (clock?.values ?? []).map((t) => (t ?? 0) * 1e6), [clock]);
-  return <>{traces.map((trace) => <OneTrace key={trace.name} title={`${file.purpose}, ${trace.name}`} x={x} trace={trace} picked={detail?.picks.find((p) => p.wave === wave && p.trace === trace.name && file.purpose.startsWith('waveform'))?.time} onSet={onArrival === undefined || !file.purpose.startsWith('waveform') ? undefined : (time) => onArrival({ wave, trace: trace.name, time, reason: '' })} rows={file.rowCount} />)}</>;
+  const trace = traces[chosen];
+  if (trace === undefined) return <Alert severity="info">The layout names no trace in {file.purpose}.</Alert>;
+  const isMeasured = file.purpose.startsWith('waveform');
+  const picked = isMeasured ? detail?.picks.find((p) => p.wave === wave && p.trace === trace.name)?.time : undefined;
+  return (
+    <div>
+      <TextField select label={`Trace of ${file.purpose}`} value={chosen} onChange={(e) => setChosen(Number(e.target.value))} sx={{ maxWidth: 280, mb: 1 }}>
+        {traces.map((t, i) => <MenuItem key={t.name} value={i}>{t.name} ({i + 1} of {traces.length})</MenuItem>)}
+      </TextField>
+      <OneTrace key={trace.name} title={`${file.purpose}, ${trace.name}`} x={x} trace={trace} picked={picked} onSet={onArrival === undefined || !isMeasured ? undefined : (time) => onArrival({ wave, trace: trace.name, time, reason: '' })} rows={file.rowCount} />
+    </div>
+  );
 }
 
 function OneTrace({ title, x, trace, picked, onSet, rows }: { title: string; x: readonly number[]; trace: FileChannels['series'][number]; picked: number | undefined; onSet?: (time: number) => void; rows: number }) {

@@ -53,7 +53,7 @@ function View({ certificate: c }: { certificate: Certificate }) {
         <Box key={`${r.specimenMark} ${r.basis}`}>
           <Typography variant="h2" sx={{ mb: 1 }}><span className="mono">{r.specimenMark}</span>, {r.basis}</Typography>
           <ConstantsPlate constants={r.result.constants} basis={r.basis} />
-          <Typography variant="body2" color="text.secondary">{r.method.code} version {r.method.versionNumber}, {r.method.name}; {r.method.standard}. Reviewed by {r.reviewedBy}, {showInstant(r.reviewedAt)}.</Typography>
+          <Typography variant="body2" color="textSecondary">{r.method.code} version {r.method.versionNumber}, {r.method.name}; {r.method.standard}. Reviewed by {r.reviewedBy}, {showInstant(r.reviewedAt)}.</Typography>
         </Box>
       ))}</Stack>
       {s.conformity.length > 0 && <Section title="Conformity"><Stack component="ul" sx={{ m: 0 }}>{s.conformity.map((x, i) => <li key={i}>{x.statement}</li>)}</Stack></Section>}

@@ -25,10 +25,10 @@ export function Methods() {
       <Loaded query={query}>{({ items }) => items.length === 0 ? <EmptyState title="No methods yet">A run is made by a written method.</EmptyState> : (
         <Stack spacing={3}>{items.filter((m) => m.current).map((m) => (
           <Section key={m.id} title={`${m.code} version ${m.versionNumber}: ${m.name}`} action={mayChange && <Button onClick={() => setEditing(m)}>Next version</Button>}>
-            <Typography color="text.secondary">{m.kind}; {m.standard}. Written by {m.createdBy}, {showInstant(m.createdAt)}.</Typography>
+            <Typography color="textSecondary">{m.kind}; {m.standard}. Written by {m.createdBy}, {showInstant(m.createdAt)}.</Typography>
             <Typography sx={{ my: 1, whiteSpace: 'pre-line', maxWidth: 800 }}>{m.description}</Typography>
             {m.cautions !== '' && <Caution>{m.cautions}</Caution>}
-            {items.some((o) => o.code === m.code && !o.current) && <Typography variant="caption" color="text.secondary">Earlier versions: {items.filter((o) => o.code === m.code && !o.current).map((o) => `${o.versionNumber} of ${showInstant(o.createdAt)}`).join('; ')}</Typography>}
+            {items.some((o) => o.code === m.code && !o.current) && <Typography variant="caption" color="textSecondary">Earlier versions: {items.filter((o) => o.code === m.code && !o.current).map((o) => `${o.versionNumber} of ${showInstant(o.createdAt)}`).join('; ')}</Typography>}
           </Section>
         ))}</Stack>
       )}</Loaded>

@@ -65,7 +65,7 @@ function OrderView({ order }: { order: Order }) {
         )}
       </Section>
       <Section title="Certificates">
-        {order.certificates.length === 0 ? <Typography color="text.secondary">None yet.</Typography> : (
+        {order.certificates.length === 0 ? <Typography color="textSecondary">None yet.</Typography> : (
           <PlainTable label="Certificates" rows={order.certificates} keyOf={(c) => c.id} columns={[
             { title: 'Number', cell: (c) => <MuiLink component={Link} to={`/certificates/${c.id}`} className="mono">{c.number}</MuiLink> },
             { title: 'Issue', cell: (c) => c.issue, numeric: true }, { title: 'State', cell: (c) => <StateWord state={c.state} /> }, { title: 'Released', cell: (c) => showInstant(c.releasedAt) }, { title: 'Reason', cell: (c) => c.reason ?? '' },
@@ -83,7 +83,7 @@ function Samples({ order, mayLog }: { order: Order; mayLog: boolean }) {
   return (
     <Section title="Samples" action={mayLog && <Button onClick={() => setAdding(true)}>Log a sample</Button>}>
       {adding && <SampleForm orderId={order.id} onDone={(made) => { setAdding(false); setSpecimensOf(made.id); }} onCancel={() => setAdding(false)} />}
-      <Loaded query={query}>{({ items }) => items.length === 0 ? <Typography color="text.secondary">None logged.</Typography> : (
+      <Loaded query={query}>{({ items }) => items.length === 0 ? <Typography color="textSecondary">None logged.</Typography> : (
         <PlainTable label="Samples" rows={items} keyOf={(s) => s.id} columns={[
           { title: 'Mark', cell: (s) => <span className="mono">{s.mark}</span> }, { title: 'Material', cell: (s) => `${s.material} (${s.materialClass})` }, { title: 'Received', cell: (s) => showDay(s.receivedOn) },
           { title: 'Condition', cell: (s) => s.condition }, { title: 'Specimens', cell: (s) => s.specimenCount, numeric: true },

@@ -28,7 +28,7 @@ export function People() {
       <Section title="Customers" action={<Button onClick={() => setCustomer('new')}>Add a customer</Button>}>
         <Stack spacing={2}>
           {customer !== null && <CustomerForm key={customer === 'new' ? 'new' : customer.id} customer={customer === 'new' ? null : customer} onDone={() => setCustomer(null)} />}
-          <Loaded query={customers}>{({ items }) => items.length === 0 ? <Typography color="text.secondary">None yet.</Typography> : <PlainTable label="Customers" rows={items} keyOf={(c) => c.id} columns={[{ title: 'Name', cell: (c) => c.name }, { title: 'Address', cell: (c) => c.address }, { title: 'E-mail', cell: (c) => c.contactEmail }, { title: '', cell: (c) => <Button size="small" onClick={() => setCustomer(c)} aria-label={`Change ${c.name}`}>Change</Button> }]} />}</Loaded>
+          <Loaded query={customers}>{({ items }) => items.length === 0 ? <Typography color="textSecondary">None yet.</Typography> : <PlainTable label="Customers" rows={items} keyOf={(c) => c.id} columns={[{ title: 'Name', cell: (c) => c.name }, { title: 'Address', cell: (c) => c.address }, { title: 'E-mail', cell: (c) => c.contactEmail }, { title: '', cell: (c) => <Button size="small" onClick={() => setCustomer(c)} aria-label={`Change ${c.name}`}>Change</Button> }]} />}</Loaded>
         </Stack>
       </Section>
       <Section title="Laboratory"><Loaded query={laboratory}>{(l) => <LaboratoryForm key={l.version} laboratory={l} />}</Loaded></Section>

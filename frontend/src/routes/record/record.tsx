@@ -49,7 +49,7 @@ export function RecordPage() {
           <Stack direction="row" spacing={1} sx={{ mt: 1, alignItems: 'center' }}>
             <Button disabled={pageNumber === 0} onClick={() => set('page', pageNumber === 1 ? '' : String(pageNumber - 1))}>Newer</Button>
             <Button disabled={(pageNumber + 1) * PAGE_SIZE >= total} onClick={() => set('page', String(pageNumber + 1))}>Older</Button>
-            <Typography color="text.secondary">{pageNumber * PAGE_SIZE + 1} to {Math.min((pageNumber + 1) * PAGE_SIZE, total)} of {total.toLocaleString('en-GB')}</Typography>
+            <Typography color="textSecondary">{pageNumber * PAGE_SIZE + 1} to {Math.min((pageNumber + 1) * PAGE_SIZE, total)} of {total.toLocaleString('en-GB')}</Typography>
           </Stack>
         </Box>
       )}</Loaded>

@@ -40,7 +40,7 @@ function Piece({ piece, mayEnter }: { piece: ReferencePiece; mayEnter: boolean }
   ], [piece]);
   return (
     <Section title={piece.name} action={<><StateWord state={piece.withinLimits ? 'within limits' : 'out of limits'} />{mayEnter && <Button onClick={() => setEntering(!entering)}>Enter a check</Button>}</>}>
-      <Typography color="text.secondary">{piece.quantity}, known <Numeral value={piece.knownValue} digits={7} /> ± <Numeral value={piece.knownExpandedUncertainty} digits={2} /> {piece.unit}; measured with {piece.instrumentName}. Limits where |E_n| = 1.</Typography>
+      <Typography color="textSecondary">{piece.quantity}, known <Numeral value={piece.knownValue} digits={7} /> ± <Numeral value={piece.knownExpandedUncertainty} digits={2} /> {piece.unit}; measured with {piece.instrumentName}. Limits where |E_n| = 1.</Typography>
       {entering && <CheckForm piece={piece} onDone={() => setEntering(false)} />}
       {piece.checks.length > 1 && <Plot title={`Control chart of ${piece.name}`} x={x} series={series} xLabel="Check" yLabel={`${piece.quantity}, ${piece.unit}`} height={240} summary={`${piece.checks.length} checks, ${piece.checks.filter((c) => !c.withinLimits).length} out of limits`} />}
       <PlainTable label={`Checks of ${piece.name}`} rows={[...piece.checks].reverse()} keyOf={(c) => c.id} columns={[{ title: 'When', cell: (c) => showInstant(c.checkedAt) }, { title: 'By', cell: (c) => c.personName }, { title: 'Value', cell: (c) => <><Numeral value={c.value} digits={7} /> {piece.unit}</>, numeric: true }, { title: 'E_n', cell: (c) => <Numeral value={c.en} digits={3} />, numeric: true }, { title: 'Verdict', cell: (c) => <StateWord state={c.withinLimits ? 'within limits' : 'out of limits'} /> }]} />

@@ -1,4 +1,4 @@
-import { run as runSchema, fit as fitSchema, type Run } from '@strainwright/common/contract/run-answers';
+import { run as runSchema, fit as fitSchema, type Fit, type Run } from '@strainwright/common/contract/run-answers';
 import type { PulseSettings, Region } from '@strainwright/common/contract/runs';
 import { Alert, Box, Button, Stack, Tab, Tabs, Typography } from '@mui/material';
 import { useState } from 'react';
@@ -11,7 +11,7 @@ import { FindingsList } from '../../components/findings-list';
 import { Page, Section } from '../../components/page';
 import { StateWord } from '../../components/state-word';
 import { EmptyState, Loaded, ProblemAlert } from '../../components/states';
-import { FitView, useFit } from '../../features/fits/fit-result';
+import { FitAnswer, FitEvidence, useFit } from '../../features/fits/fit-result';
 import { PulseFitForm, StressStrainFitForm, type WindowStrain } from '../../features/fits/fit-settings';
 import { LayoutSection } from '../../features/runs/layout-section';
 import { RawPlots } from '../../features/runs/raw-plot';
@@ -67,7 +67,7 @@ function WithFit({ run, mayFit, fitId }: { run: Run; mayFit: boolean; fitId: str
   return <Loaded query={useFit(fitId)}>{(fit) => <Bench key={fit.state} run={run} mayFit={mayFit} fit={fit} />}</Loaded>;
 }
 
-function Bench({ run, mayFit, fit }: { run: Run; mayFit: boolean; fit: Parameters<typeof FitView>[0]['fit'] | null }) {
+function Bench({ run, mayFit, fit }: { run: Run; mayFit: boolean; fit: Fit | null }) {
   const mayAdopt = useMay('fits.adopt');
   const result = fit?.result ?? null;
   const detail = result?.detail.kind === 'stress-strain' ? result.detail : null;
@@ -83,17 +83,18 @@ function Bench({ run, mayFit, fit }: { run: Run; mayFit: boolean; fit: Parameter
   return (
     <Stack spacing={3} sx={{ mt: 2 }}>
       <ProblemAlert error={adopt.error} />
+      {fit !== null && <>
+        {mayAdopt && fit.state === 'done' && !fit.adopted && run.state === 'recorded' && <Box><Button variant="contained" color="primary" onClick={() => adopt.mutate(fit.id)} disabled={adopt.isPending}>Adopt fit {fit.number}</Button></Box>}
+        {fit.adopted && <Alert severity="success">Fit {fit.number} is adopted for this run.</Alert>}
+        <FitAnswer fit={fit} />
+      </>}
       <Box sx={{ display: 'grid', gap: 3, gridTemplateColumns: { xs: '1fr', md: mayFit ? 'minmax(0, 1fr) 280px' : '1fr' } }}>
         <Box sx={{ minWidth: 0 }}>
-          {run.files.length === 0 ? <Typography color="text.secondary">Typed transit times; there is no raw record.</Typography> : <RawPlots run={run} result={result} window={run.kind === 'stress-strain' && (detail !== null || by !== 'automatic') ? { ...window, onChange: mayFit ? move : undefined } : undefined} onArrival={mayFit ? arrivalSet : undefined} />}
+          {run.files.length === 0 ? <Typography color="textSecondary">Typed transit times; there is no raw record.</Typography> : <RawPlots run={run} result={result} window={run.kind === 'stress-strain' && (detail !== null || by !== 'automatic') ? { ...window, onChange: mayFit ? move : undefined } : undefined} onArrival={mayFit ? arrivalSet : undefined} />}
         </Box>
         {mayFit && <Box>{run.kind === 'pulse' ? <PulseFitForm run={run} arrivals={arrivals} setArrivals={setArrivals} /> : <StressStrainFitForm run={run} by={by} setBy={setBy} window={window} setWindow={setWindow} />}</Box>}
       </Box>
-      {fit === null ? <EmptyState title="No fit yet">{mayFit ? 'Choose the settings and fit.' : 'An analyst asks for fits.'}</EmptyState> : <>
-        {mayAdopt && fit.state === 'done' && !fit.adopted && run.state === 'recorded' && <Box><Button variant="contained" color="primary" onClick={() => adopt.mutate(fit.id)} disabled={adopt.isPending}>Adopt fit {fit.number}</Button></Box>}
-        {fit.adopted && <Alert severity="success">Fit {fit.number} is adopted for this run.</Alert>}
-        <FitView fit={fit} />
-      </>}
+      {fit === null ? <EmptyState title="No fit yet">{mayFit ? 'Choose the settings and fit.' : 'An analyst asks for fits.'}</EmptyState> : <FitEvidence fit={fit} />}
     </Stack>
   );
 }

@@ -37,7 +37,7 @@ export function SignIn() {
         <Stack spacing={2}>
           <Box>
             <Typography variant="h1">Strainwright</Typography>
-            <Typography color="text.secondary">Elastic constants, from specimen to certificate</Typography>
+            <Typography color="textSecondary">Elastic constants, from specimen to certificate</Typography>
           </Box>
           <ProblemAlert error={problem} />
           <FormText control={control} name="email" label="E-mail" type="email" autoComplete="username" autoFocus />

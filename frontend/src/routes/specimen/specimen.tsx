@@ -57,7 +57,7 @@ function SpecimenView({ specimen }: { specimen: Specimen }) {
             { title: 'Performed', cell: (r) => `${r.performedBy}, ${showInstant(r.performedAt)}` }, { title: 'Fits', cell: (r) => (r.fits.length === 0 ? 'none' : r.fits.map((f) => `${f.number} ${f.state}${f.adopted ? ', adopted' : ''}`).join('; ')) },
           ]} />
         )}
-        <Typography variant="caption" color="text.secondary">A determination is composed from adopted fits; static and dynamic apart.</Typography>
+        <Typography variant="caption" color="textSecondary">A determination is composed from adopted fits; static and dynamic apart.</Typography>
       </Section>
     </Page>
   );

@@ -24,7 +24,7 @@ export function Worklist() {
                     <Box component="li" key={item.path + item.id} sx={{ display: 'flex', gap: 2, flexWrap: 'wrap', py: 0.75, borderBottom: '1px solid', borderColor: 'divider' }}>
                       <MuiLink component={Link} to={item.path} className="mono" sx={{ minWidth: 140 }}>{item.label}</MuiLink>
                       <Typography sx={{ flex: 1, minWidth: 200 }}>{item.detail}</Typography>
-                      <Typography color="text.secondary">{item.dueOn !== null ? `due ${showDay(item.dueOn)}` : item.since !== null ? `since ${showInstant(item.since)}` : ''}</Typography>
+                      <Typography color="textSecondary">{item.dueOn !== null ? `due ${showDay(item.dueOn)}` : item.since !== null ? `since ${showInstant(item.since)}` : ''}</Typography>
                     </Box>
                   ))}
                 </Stack>

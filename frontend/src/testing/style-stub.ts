@@ -1,0 +1,2 @@
+/** Styles have no meaning in jsdom. */
+export default {};
