@@ -1,20 +1,25 @@
 // `npm run dev`: compiles and restarts the server when its sources change, and serves the client through Vite, which reloads by itself.
 import { spawn } from 'node:child_process';
-import { join } from 'node:path';
+import { createRequire } from 'node:module';
+import { dirname, join } from 'node:path';
 import { buildWhatChanged, installPackages, root } from './prepare.mjs';
 
 installPackages();
 buildWhatChanged(['common', 'backend']);
 
-const bin = (name) => join(root, 'node_modules', '.bin', process.platform === 'win32' ? `${name}.cmd` : name);
-const swc = ['src', '--out-dir', 'dist', '--strip-leading-paths', '--config-file', '../.swcrc', '--ignore', '**/*.spec.ts', '--watch', '--quiet'];
+/** The program of a package, as the workspace finds it: run by Node itself, so that stopping it stops it. */
+const program = (workspace, name, file) => join(dirname(createRequire(join(root, workspace, 'package.json')).resolve(`${name}/package.json`)), file);
+const compile = (workspace) => ({
+  cwd: workspace,
+  args: [program(workspace, '@swc/cli', 'bin/swc.js'), 'src', '--out-dir', 'dist', '--strip-leading-paths', '--config-file', '../.swcrc', '--ignore', '**/*.spec.ts', '--watch', '--quiet'],
+});
 const programs = [
-  { command: bin('swc'), args: swc, cwd: join(root, 'common') },
-  { command: bin('swc'), args: swc, cwd: join(root, 'backend') },
-  { command: process.execPath, args: ['--watch', '--watch-preserve-output', '--enable-source-maps', 'dist/main.js'], cwd: join(root, 'backend') },
-  { command: bin('vite'), args: [], cwd: join(root, 'frontend') },
+  compile('common'),
+  compile('backend'),
+  { cwd: 'backend', args: ['--watch', '--watch-preserve-output', '--enable-source-maps', 'dist/main.js'] },
+  { cwd: 'frontend', args: [program('frontend', 'vite', 'bin/vite.js')] },
 ];
-const children = programs.map(({ command, args, cwd }) => spawn(command, args, { cwd, stdio: 'inherit', shell: process.platform === 'win32' }));
+const children = programs.map(({ cwd, args }) => spawn(process.execPath, args, { cwd: join(root, cwd), stdio: 'inherit' }));
 
 function stop() {
   for (const child of children) if (child.exitCode === null) child.kill('SIGTERM');
