@@ -1,3 +1,4 @@
+import type { Server as HttpServer } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import type { NestExpressApplication } from '@nestjs/platform-express';
 import { createApplication } from './application';
@@ -5,6 +6,9 @@ import { openDatabase } from './database/open';
 import { firstStart, isNew } from './first-start';
 import { fitWorker } from './fits/fit-worker';
 import type { Config } from './platform/config';
+
+/** What open requests are given when the server stops. */
+const PATIENCE_MS = 1_000;
 
 export interface Server {
   app: NestExpressApplication;
@@ -22,12 +26,12 @@ export async function startServer(config: Config): Promise<Server> {
     const computes = database.kind === 'embedded' || (config.demo && (await isNew(database)));
     const app = await createApplication(config, database, computes ? fitWorker() : undefined);
     const notes = await firstStart(app);
-    const http = await app.listen(config.port, config.host);
+    const http: HttpServer = await app.listen(config.port, config.host);
     const { port } = http.address() as AddressInfo;
     return {
       app, port, notes,
       close: async () => {
-        http.closeAllConnections();
+        await endRequests(http);
         await app.close();
         await database.close();
       },
@@ -36,4 +40,13 @@ export async function startServer(config: Config): Promise<Server> {
     await database.close();
     throw error;
   }
+}
+
+/** Open requests may end; streams of events, which never would, and whatever else takes longer, are cut off. */
+async function endRequests(http: HttpServer): Promise<void> {
+  const closed = new Promise((resolve) => http.close(resolve));
+  http.closeIdleConnections();
+  const cut = setTimeout(() => http.closeAllConnections(), PATIENCE_MS);
+  await closed;
+  clearTimeout(cut);
 }

@@ -1,4 +1,4 @@
-import type { OnApplicationShutdown } from '@nestjs/common';
+import { Logger, type OnApplicationShutdown } from '@nestjs/common';
 import type { Redis } from 'ioredis';
 import type { Config } from './config';
 
@@ -13,7 +13,10 @@ export class RedisConnections implements OnApplicationShutdown {
 
   static async open(config: Config): Promise<RedisConnections> {
     const commands = config.redisUrl === undefined ? await inProcess() : await connect(config.redisUrl);
-    return new RedisConnections(commands, commands.duplicate());
+    const subscriber = commands.duplicate();
+    const logger = new Logger('Redis');
+    for (const connection of [commands, subscriber]) connection.on('error', (error) => logger.warn(error.message));
+    return new RedisConnections(commands, subscriber);
   }
 
   onApplicationShutdown(): void {
