@@ -64,6 +64,23 @@ describe('elasticResult', () => {
     expect(result.findings.find((f) => f.code === 'MONTE_CARLO_DISAGREES')?.seen).toContain('second order');
   });
 
+  it('judges the propagation apart from few readings: their long tails widen the interval and are a note, no disagreement', () => {
+    const run = (degreesOfFreedom: number) => {
+      const model = new Model();
+      const E = input(model, 'a', 70e9, 0.5e9, { distribution: 't', degreesOfFreedom }).plus(input(model, 'b', 0, 0.5e9, { distribution: 't', degreesOfFreedom }));
+      return elasticResult({ basis: 'static', constants: { E, nu: null, G: null, K: null }, origin: ORIGIN, findings: [], seed: 1 });
+    };
+    const few = run(3);
+    expect(few.monteCarlo.agrees).toBe(true);
+    expect(codes(few.findings)).toEqual(['FEW_DEGREES_OF_FREEDOM E']);
+    expect(few.findings[0]?.severity).toBe('note');
+    const width = (result: typeof few) => (result.constants.E?.interval.high ?? 0) - (result.constants.E?.interval.low ?? 0);
+    // The 97.5 % point of the sum of two t of 3 degrees of freedom is 4.5876, by quadrature of their convolution.
+    expect(Math.abs(width(few) / (2 * 0.5e9) / 4.5876 - 1)).toBeLessThan(0.03);
+    expect(few.constants.E).toMatchObject({ degreesOfFreedom: expect.closeTo(6, 9), coverageFactor: expect.closeTo(2.4469, 4) });
+    expect(run(60).findings).toEqual([]);
+  });
+
   it.each([
     { nu: 0.52, u: 0.01, expected: ['NU_OUTSIDE_RANGE nu', 'MODULUS_NOT_POSITIVE K'] },
     { nu: -0.35, u: 0.01, expected: ['NU_NEGATIVE nu'] },

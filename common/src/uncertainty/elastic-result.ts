@@ -1,28 +1,18 @@
 /** The four constants as the contract states them: first order and Monte Carlo side by side, correlations and the whole budget. */
-import type { BudgetLine, ConstantResult, ElasticResult, Finding, MonteCarloCheck, PerConstant } from '../contract/result';
+import type { BudgetLine, ConstantResult, ElasticResult, Finding, PerConstant } from '../contract/result';
 import { CONSTANTS, type Basis, type ConstantName } from '../contract/vocabulary';
 import { EvaluationRefused } from '../findings/evaluation-refused';
 import { finding } from '../findings/findings';
 import { covariance, coverageFactor, firstOrder, type FirstOrder } from './first-order';
-import type { Model, Term } from './model';
-import { numericalTolerance, propagateDistributions, type MonteCarlo, type Propagated } from './monte-carlo';
-import { secondOrderUncertainty } from './second-order';
+import type { Term } from './model';
+import type { Propagated } from './monte-carlo';
+import { comparison, monteCarloFindings, propagate, type Known, type TrialOptions } from './monte-carlo-check';
 
-export interface ElasticTerms {
+export interface ElasticTerms extends TrialOptions {
   readonly basis: Basis;
   readonly constants: Readonly<Record<ConstantName, Term | null>>;
   readonly origin: Readonly<Record<ConstantName, 'measured' | 'derived'>>;
   readonly findings: readonly Finding[];
-  readonly seed: number;
-  readonly maximumTrials?: number;
-  readonly onProgress?: (fraction: number) => void;
-}
-
-interface Known {
-  readonly name: ConstantName;
-  readonly term: Term;
-  readonly first: FirstOrder;
-  readonly factor: number;
 }
 
 const finite = (value: number): number | null => (Number.isFinite(value) ? value : null);
@@ -42,20 +32,15 @@ export function elasticResult(terms: ElasticTerms): ElasticResult {
   if (known.length === 0) throw new RangeError('No constant to state');
   const unbounded = known.filter((k) => !Number.isFinite(k.first.value) || !Number.isFinite(k.first.standardUncertainty));
   if (unbounded.length > 0) throw new EvaluationRefused([...terms.findings, ...unbounded.map((k) => finding('CONSTANT_UNBOUNDED', k.name, `${k.name} = ${k.first.value}, standard uncertainty ${k.first.standardUncertainty}`))]);
-  // Shortest intervals are judged at one figure of u, the trials settled to a fifth of that (JCGM 101 8.2).
-  const tolerance = (k: Known) => (k.first.standardUncertainty > 0 ? numericalTolerance(k.first.standardUncertainty) : Number.MIN_VALUE);
-  const trials = propagateDistributions(known.map((k) => k.term), {
-    seed: terms.seed, maximumTrials: terms.maximumTrials, tolerances: known.map((k) => tolerance(k) / 5), onProgress: terms.onProgress,
-  });
-  const propagated = (name: ConstantName): Propagated | undefined => trials.outputs[known.findIndex((k) => k.name === name)];
-  const monteCarlo = comparison(known, trials, propagated, tolerance, terms.seed);
+  const trials = propagate(known, terms);
+  const monteCarlo = comparison(known, trials, terms.seed);
   return {
     basis: terms.basis,
-    constants: perConstant((name) => constantOf(known.find((k) => k.name === name), propagated(name), terms.origin[name])),
+    constants: perConstant((name) => constantOf(known.find((k) => k.name === name), trials.stated.outputs[known.findIndex((k) => k.name === name)], terms.origin[name])),
     correlation: correlationMatrix(known),
     budget: budgetOf(known),
     monteCarlo,
-    findings: [...terms.findings, ...constantFindings(known, monteCarlo, trials)],
+    findings: [...terms.findings, ...constantFindings(known), ...monteCarloFindings(known, monteCarlo, trials)],
   };
 }
 
@@ -66,19 +51,6 @@ function constantOf(known: Known | undefined, propagated: Propagated | undefined
     value: first.value, standardUncertainty: first.standardUncertainty, expandedUncertainty: factor * first.standardUncertainty, coverageFactor: factor,
     degreesOfFreedom: finite(first.degreesOfFreedom), interval: { low: propagated.low, high: propagated.high }, unit: name === 'nu' ? '1' : 'Pa', origin,
   };
-}
-
-function comparison(known: readonly Known[], trials: MonteCarlo, propagated: (name: ConstantName) => Propagated | undefined, toleranceOf: (k: Known) => number, seed: number): MonteCarloCheck {
-  const compare = (name: ConstantName) => {
-    const k = known.find((one) => one.name === name);
-    const p = propagated(name);
-    if (k === undefined || p === undefined) return null;
-    const U = k.factor * k.first.standardUncertainty;
-    const [lowDifference, highDifference, tolerance] = [Math.abs(k.first.value - U - p.low), Math.abs(k.first.value + U - p.high), toleranceOf(k)];
-    return { lowDifference, highDifference, tolerance, agrees: lowDifference <= tolerance && highDifference <= tolerance };
-  };
-  const compared = perConstant(compare);
-  return { trials: trials.trials, seed, agrees: CONSTANTS.every((name) => compared[name]?.agrees ?? true), comparison: compared };
 }
 
 function correlationMatrix(known: readonly Known[]): (number | null)[][] {
@@ -94,9 +66,7 @@ function correlationMatrix(known: readonly Known[]): (number | null)[][] {
 }
 
 function budgetOf(known: readonly Known[]): BudgetLine[] {
-  const model: Model | undefined = known[0]?.term.model;
-  if (model === undefined) return [];
-  return model.inputs.map((input, i) => {
+  return (known[0]?.term.model.inputs ?? []).map((input, i) => {
     const sensitivity = perConstant((name) => known.find((k) => k.name === name)?.first.sensitivities[i] ?? null);
     const contribution = perConstant((name) => {
       const k = known.find((one) => one.name === name);
@@ -111,26 +81,11 @@ function budgetOf(known: readonly Known[]): BudgetLine[] {
   });
 }
 
-function constantFindings(known: readonly Known[], check: MonteCarloCheck, trials: MonteCarlo): Finding[] {
-  const found: Finding[] = [];
-  for (const { name, first } of known) {
-    if (name === 'nu') found.push(...nuFindings(first));
-    else if (!(first.value > 0)) found.push(finding('MODULUS_NOT_POSITIVE', name, `${name} = ${(first.value / 1e9).toPrecision(3)} GPa`));
-  }
-  for (const { name, term, first } of known) {
-    const c = check.comparison[name];
-    if (c !== null && !c.agrees) found.push(finding('MONTE_CARLO_DISAGREES', name, disagreement(name, c, first, secondOrderUncertainty(term))));
-  }
-  if (!trials.stable) found.push(finding('MONTE_CARLO_UNSTABLE', 'Monte Carlo', `${trials.trials} trials`));
-  return found;
-}
-
-/** Says as well what curvature of the model would account for, where that can be told. */
-function disagreement(name: ConstantName, c: { lowDifference: number; highDifference: number; tolerance: number }, first: FirstOrder, second: number | null): string {
-  const [scale, unit] = name === 'nu' ? [1, ''] : [1e9, ' GPa'];
-  const text = (value: number) => `${(value / scale).toPrecision(2)}${unit}`;
-  const curvature = second === null ? '' : `; the terms of second order alone take u from ${text(first.standardUncertainty)} to ${text(second)}`;
-  return `The ends of the 95 % intervals of ${name} differ by ${text(c.lowDifference)} and ${text(c.highDifference)}, more than ${text(c.tolerance)}${curvature}`;
+function constantFindings(known: readonly Known[]): Finding[] {
+  return known.flatMap(({ name, first }) => {
+    if (name === 'nu') return nuFindings(first);
+    return first.value > 0 ? [] : [finding('MODULUS_NOT_POSITIVE', name, `${name} = ${(first.value / 1e9).toPrecision(3)} GPa`)];
+  });
 }
 
 function nuFindings(first: FirstOrder): Finding[] {

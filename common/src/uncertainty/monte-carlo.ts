@@ -2,11 +2,13 @@
  * Propagation of distributions, JCGM 101: adaptive (7.9), seeded, joint for all outputs. Trials come in batches of
  * M = max(⌈100/(1 − p)⌉, 10⁴); after h ≥ 2 batches the standard deviation of the mean over batches of each output's
  * estimate, standard uncertainty and both interval ends is formed, and the trials end when twice each is below the
- * numerical tolerance. Intervals are the shortest 95 % (5.3.4).
+ * numerical tolerance. Intervals are the shortest 95 % (5.3.4). Where an input is drawn from t with ν ≤ 4, the spread of the standard
+ * uncertainty over batches has no finite expectation, nor with ν ≤ 2 that of the mean: these are then not waited for.
  */
+import { mean } from '../statistics/descriptive';
 import type { Model, Term } from './model';
 import { RandomStream } from './random-stream';
-import { Sampler } from './sampling';
+import { hasFewDegreesOfFreedom, Sampler } from './sampling';
 
 const BATCH = 10_000;
 const PROBABILITY = 0.95;
@@ -22,6 +24,8 @@ export interface MonteCarlo {
   readonly trials: number;
   readonly stable: boolean;
   readonly outputs: readonly Propagated[];
+  /** Of each output: twice the standard deviation of the worse interval end's mean over batches. */
+  readonly endsWithin: readonly number[];
   /** Correlation matrix of the outputs over all trials. */
   readonly correlation: readonly (readonly number[])[];
 }
@@ -31,6 +35,8 @@ export interface MonteCarloOptions {
   readonly maximumTrials?: number;
   /** Absolute numerical tolerance of each output. */
   readonly tolerances: readonly number[];
+  /** Draws normal what would be drawn from t. */
+  readonly asNormal?: boolean;
   readonly onProgress?: (fraction: number) => void;
 }
 
@@ -88,7 +94,8 @@ class Evaluator {
 
 function evaluate(operation: 'add' | 'subtract' | 'multiply' | 'divide' | 'power', out: Float64Array, a: Float64Array, b: Float64Array | null, n: number): void {
   const length = out.length;
-  if (b === null) for (let i = 0; i < length; i += 1) out[i] = (a[i] as number) ** n;
+  if (b === null && n === 2) for (let i = 0; i < length; i += 1) out[i] = (a[i] as number) * (a[i] as number);
+  else if (b === null) for (let i = 0; i < length; i += 1) out[i] = (a[i] as number) ** n;
   else if (operation === 'add') for (let i = 0; i < length; i += 1) out[i] = (a[i] as number) + (b[i] as number);
   else if (operation === 'subtract') for (let i = 0; i < length; i += 1) out[i] = (a[i] as number) - (b[i] as number);
   else if (operation === 'multiply') for (let i = 0; i < length; i += 1) out[i] = (a[i] as number) * (b[i] as number);
@@ -96,24 +103,28 @@ function evaluate(operation: 'add' | 'subtract' | 'multiply' | 'divide' | 'power
 }
 
 function summary(values: Float64Array): Propagated {
-  let m = 0;
-  for (let i = 0; i < values.length; i += 1) m += ((values[i] as number) - m) / (i + 1);
+  const m = mean(values);
   let squares = 0;
-  for (let i = 0; i < values.length; i += 1) squares += ((values[i] as number) - m) ** 2;
+  for (let i = 0; i < values.length; i += 1) {
+    const d = (values[i] as number) - m;
+    squares += d * d;
+  }
   return { mean: m, standardUncertainty: Math.sqrt(squares / (values.length - 1)), ...shortestInterval(values.slice().sort()) };
 }
 
-function isStable(batches: readonly (readonly Propagated[])[], tolerances: readonly number[]): boolean {
+type Part = keyof Propagated;
+
+function awaitedParts(model: Model, asNormal: boolean): readonly Part[] {
+  const fewest = asNormal ? Infinity : Math.min(Infinity, ...model.inputs.filter(hasFewDegreesOfFreedom).map((input) => input.degreesOfFreedom));
+  return [...(fewest > 2 ? (['mean'] as const) : []), ...(fewest > 4 ? (['standardUncertainty'] as const) : []), 'low', 'high'];
+}
+
+/** Twice the standard deviation of the mean over h batches of one part of output k. */
+function spreadOf(batches: readonly (readonly Propagated[])[], k: number, part: Part): number {
   const h = batches.length;
-  if (h < 2) return false;
-  return tolerances.every((tolerance, k) =>
-    (['mean', 'standardUncertainty', 'low', 'high'] as const).every((part) => {
-      const z = batches.map((batch) => batch[k]?.[part] ?? Number.NaN);
-      const m = z.reduce((sum, v) => sum + v, 0) / h;
-      const s = Math.sqrt(z.reduce((sum, v) => sum + (v - m) ** 2, 0) / (h * (h - 1)));
-      return 2 * s < tolerance;
-    }),
-  );
+  const z = batches.map((batch) => batch[k]?.[part] ?? Number.NaN);
+  const m = z.reduce((sum, v) => sum + v, 0) / h;
+  return 2 * Math.sqrt(z.reduce((sum, v) => sum + (v - m) ** 2, 0) / (h * (h - 1)));
 }
 
 function correlationOf(outputs: readonly Float64Array[], summaries: readonly Propagated[]): number[][] {
@@ -134,7 +145,8 @@ export function propagateDistributions(outputs: readonly Term[], options: MonteC
   if (model === undefined || outputs.length !== options.tolerances.length || outputs.some((o) => o.model !== model)) throw new RangeError('Give outputs of one model, each with a tolerance');
   const maximum = Math.max(2, Math.floor((options.maximumTrials ?? 1_000_000) / BATCH));
   const inputs = model.inputs.map(() => new Float64Array(BATCH));
-  const sampler = new Sampler(model, new RandomStream(options.seed));
+  const sampler = new Sampler(model, new RandomStream(options.seed), options.asNormal);
+  const awaited = awaitedParts(model, options.asNormal ?? false);
   const evaluator = new Evaluator(model, inputs, BATCH);
   const kept: Float64Array[][] = outputs.map(() => []);
   const batches: Propagated[][] = [];
@@ -147,7 +159,7 @@ export function propagateDistributions(outputs: readonly Term[], options: MonteC
       kept[k]?.push(values);
       return summary(values);
     }));
-    stable = isStable(batches, options.tolerances);
+    stable = batches.length > 1 && options.tolerances.every((tolerance, k) => awaited.every((part) => spreadOf(batches, k, part) < tolerance));
     options.onProgress?.(stable ? 1 : batches.length / maximum);
   }
   const all = kept.map((parts) => {
@@ -156,5 +168,8 @@ export function propagateDistributions(outputs: readonly Term[], options: MonteC
     return joined;
   });
   const summaries = all.map(summary);
-  return { trials: batches.length * BATCH, stable, outputs: summaries, correlation: correlationOf(all, summaries) };
+  return {
+    trials: batches.length * BATCH, stable, outputs: summaries, correlation: correlationOf(all, summaries),
+    endsWithin: outputs.map((_, k) => Math.max(spreadOf(batches, k, 'low'), spreadOf(batches, k, 'high'))),
+  };
 }

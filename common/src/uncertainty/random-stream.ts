@@ -52,8 +52,12 @@ export class RandomStream {
     const c = 1 / Math.sqrt(9 * d);
     for (;;) {
       const x = this.normal();
-      const v = (1 + c * x) ** 3;
-      if (v > 0 && Math.log(this.uniform()) < 0.5 * x * x + d - d * v + d * Math.log(v)) return d * v;
+      const root = 1 + c * x;
+      if (root <= 0) continue;
+      const v = root * root * root;
+      const u = this.uniform();
+      // The first test decides most cases without a logarithm.
+      if (u < 1 - 0.0331 * x * x * x * x || Math.log(u) < 0.5 * x * x + d - d * v + d * Math.log(v)) return d * v;
     }
   }
 }

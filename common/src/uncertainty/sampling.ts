@@ -7,12 +7,16 @@
 import type { InputSpec, Model } from './model';
 import type { RandomStream } from './random-stream';
 
-/** Beyond this many degrees of freedom t is drawn as normal: its 95 % quantile is then within 0.03 % of it. */
+/** Beyond this many degrees of freedom t is drawn as normal: its 95 % quantile is then within 0.1 % of it. */
 const ENOUGH = 2000;
 
-function fillOne(input: InputSpec, out: Float64Array, random: RandomStream): void {
+/** Whether an input is drawn from t. */
+export function hasFewDegreesOfFreedom({ standardUncertainty, distribution, degreesOfFreedom }: InputSpec): boolean {
+  return standardUncertainty > 0 && (distribution === 't' || distribution === 'normal') && degreesOfFreedom < ENOUGH;
+}
+
+function fillOne(input: InputSpec, out: Float64Array, random: RandomStream, few: boolean): void {
   const { value, standardUncertainty: u, distribution, degreesOfFreedom } = input;
-  const few = (distribution === 't' || distribution === 'normal') && degreesOfFreedom < ENOUGH;
   for (let i = 0; i < out.length; i += 1) {
     if (u === 0) out[i] = value;
     else if (few) out[i] = value + u * random.studentT(degreesOfFreedom);
@@ -54,8 +58,11 @@ export class Sampler {
   private readonly alone: readonly number[];
   private readonly joint: readonly JointDraw[];
 
-  /** @throws RangeError when the model's correlations contradict one another */
-  constructor(private readonly model: Model, private readonly random: RandomStream) {
+  /**
+   * @param asNormal draws normal what would be drawn from t
+   * @throws RangeError when the model's correlations contradict one another
+   */
+  constructor(private readonly model: Model, private readonly random: RandomStream, private readonly asNormal = false) {
     const groups = model.correlationGroups();
     this.alone = groups.filter((group) => group.length === 1).flat();
     this.joint = groups.filter((group) => group.length > 1).map((inputs) => ({
@@ -69,7 +76,7 @@ export class Sampler {
   fill(trials: readonly Float64Array[]): void {
     for (const i of this.alone) {
       const [input, out] = [this.model.inputs[i], trials[i]];
-      if (input !== undefined && out !== undefined) fillOne(input, out, this.random);
+      if (input !== undefined && out !== undefined) fillOne(input, out, this.random, !this.asNormal && hasFewDegreesOfFreedom(input));
     }
     for (const group of this.joint) this.fillJoint(group, trials);
   }
@@ -79,7 +86,7 @@ export class Sampler {
     const z = new Float64Array(inputs.length);
     for (let trial = 0; trial < count; trial += 1) {
       for (let k = 0; k < z.length; k += 1) z[k] = this.random.normal();
-      const stretch = degreesOfFreedom < ENOUGH ? this.random.studentStretch(degreesOfFreedom) : 1;
+      const stretch = !this.asNormal && degreesOfFreedom < ENOUGH ? this.random.studentStretch(degreesOfFreedom) : 1;
       inputs.forEach((i, k) => {
         const [input, out] = [this.model.inputs[i], trials[i]];
         if (input === undefined || out === undefined) return;
