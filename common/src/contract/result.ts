@@ -69,7 +69,10 @@ export const budgetLine = z.object({
 });
 export type BudgetLine = z.infer<typeof budgetLine>;
 
-/** JCGM 101 clause 8 comparison of the first-order interval with the Monte Carlo one. */
+/**
+ * JCGM 101 clause 8: the interval y ± 1.96 u against trials with the same standard uncertainties. `trials` counts those behind the
+ * stated intervals, in which inputs of few degrees of freedom are drawn from t.
+ */
 export const monteCarloCheck = z.object({
   trials: z.number().int().positive(),
   seed: z.number().int(),
