@@ -105,11 +105,31 @@ function evaluate(operation: 'add' | 'subtract' | 'multiply' | 'divide' | 'power
 function summary(values: Float64Array): Propagated {
   const m = mean(values);
   let squares = 0;
-  for (let i = 0; i < values.length; i += 1) {
-    const d = (values[i] as number) - m;
-    squares += d * d;
+  for (let i = 0; i < values.length; i += 1) squares += ((values[i] as number) - m) ** 2;
+  const standardUncertainty = Math.sqrt(squares / (values.length - 1));
+  return { mean: m, standardUncertainty, ...(shortestFromTails(values, m, standardUncertainty) ?? shortestInterval(values.slice().sort())) };
+}
+
+/** Beyond this many standard uncertainties lie about 8 % of a normal distribution on each side: more than the 5 % needed. */
+const TAIL = 1.4;
+
+/**
+ * The same interval from the two tails alone: its lower end is among the lowest share 1 − p of the values, its upper end among
+ * the highest, so the middle need not be sorted. Null where a tail is too short for that.
+ */
+function shortestFromTails(values: Float64Array, m: number, u: number): { low: number; high: number } | null {
+  const [below, above] = [m - TAIL * u, m + TAIL * u];
+  const lows = values.filter((v) => v < below).sort();
+  const highs = values.filter((v) => v > above).sort();
+  const inside = Math.min(Math.ceil(PROBABILITY * values.length), values.length - 1);
+  const candidates = values.length - inside;
+  if (lows.length < candidates || highs.length < candidates) return null;
+  let [best, from] = [Infinity, 0];
+  for (let i = 0; i < candidates; i += 1) {
+    const width = (highs[highs.length - candidates + i] as number) - (lows[i] as number);
+    if (width < best) [best, from] = [width, i];
   }
-  return { mean: m, standardUncertainty: Math.sqrt(squares / (values.length - 1)), ...shortestInterval(values.slice().sort()) };
+  return { low: lows[from] as number, high: highs[highs.length - candidates + from] as number };
 }
 
 type Part = keyof Propagated;
