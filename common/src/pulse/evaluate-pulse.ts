@@ -42,7 +42,7 @@ interface WaveOutcome {
   readonly findings: readonly Finding[];
 }
 
-export const DYNAMIC_ORIGIN = { E: 'derived', nu: 'derived', G: 'measured', K: 'derived' } as const;
+const ORIGIN = { E: 'derived', nu: 'derived', G: 'measured', K: 'derived' } as const;
 
 function needed(term: Term | null, measured: SpecimenMeasurement, what: string): Term {
   if (term !== null) return term;
@@ -61,7 +61,7 @@ function outcomeOf(model: Model, input: PulseInput, wave: Wave, gateOf: (zero: n
   const picked = arrivals.times.length > 0 ? arrivals : null;
   const values = picked?.times ?? typed;
   if (values.length === 0) throw new EvaluationRefused([finding('ARRIVAL_MISSING', wave, `No transit time of ${wave}`)]);
-  const read = timeTerm(model, { wave, key: `time.${wave}`, label: `${wave} times`, values, resolution, picked });
+  const read = timeTerm(model, { key: `time.${wave}`, label: `${wave} times`, values, resolution, picked });
   const transit = transitTime(read, zero, timeInstrument === null ? null : calibrationInput(model, timeInstrument, 's'));
   if (!(transit.value > 0)) throw new EvaluationRefused([finding('TRANSIT_TIME_NOT_POSITIVE', wave, `Transit time of ${wave} is ${(transit.value * 1e6).toFixed(3)} µs after the zero time`)]);
   const outside = timeInstrument === null ? [] : rangeFindings(timeInstrument, values, (s) => `${Number((s * 1e6).toPrecision(5))} µs`);
@@ -122,6 +122,6 @@ export function fitPulse(input: PulseInput, onProgress: (fraction: number) => vo
 /** @throws EvaluationRefused as `fitPulse` does */
 export function evaluatePulse(input: PulseInput, onProgress: (fraction: number) => void = () => undefined): FitResult {
   const { constants, detail, findings } = fitPulse(input, (fraction) => onProgress(0.3 * fraction));
-  const result = elasticResult({ basis: 'dynamic', constants, origin: DYNAMIC_ORIGIN, findings, seed: input.seed, onProgress: (fraction) => onProgress(0.3 + 0.7 * fraction) });
+  const result = elasticResult({ basis: 'dynamic', constants, origin: ORIGIN, findings, seed: input.seed, onProgress: (fraction) => onProgress(0.3 + 0.7 * fraction) });
   return { ...result, detail };
 }

@@ -1,6 +1,9 @@
 /** Plain questions about a row of samples. */
 import { at } from './trace';
 
+// Looked up once: under test runners the global object is slow, and these stand in the innermost loops.
+const { abs, sign } = Math;
+
 export interface Moments {
   readonly mean: number;
   readonly sd: number;
@@ -19,7 +22,7 @@ export function moments(x: Float64Array, from: number, to: number): Moments {
 export function converterStep(x: Float64Array): number {
   let step = Infinity;
   for (let i = 1; i < x.length; i += 1) {
-    const d = Math.abs(at(x, i) - at(x, i - 1));
+    const d = abs(at(x, i) - at(x, i - 1));
     if (d > 0 && d < step) step = d;
   }
   return Number.isFinite(step) ? step : 0;
@@ -30,7 +33,7 @@ export function largest(x: Float64Array, from: number, mean: number): { index: n
   let index = from;
   let value = 0;
   for (let i = from; i < x.length; i += 1) {
-    const a = Math.abs(at(x, i) - mean);
+    const a = abs(at(x, i) - mean);
     if (a > value) [index, value] = [i, a];
   }
   return { index, value };
@@ -38,7 +41,7 @@ export function largest(x: Float64Array, from: number, mean: number): { index: n
 
 /** First index where |x − mean| exceeds a level, at or after `from`; −1 for none. */
 export function firstAbove(x: Float64Array, from: number, mean: number, level: number): number {
-  for (let i = from; i < x.length; i += 1) if (Math.abs(at(x, i) - mean) > level) return i;
+  for (let i = from; i < x.length; i += 1) if (abs(at(x, i) - mean) > level) return i;
   return -1;
 }
 
@@ -47,10 +50,10 @@ export function halfCycleAfter(x: Float64Array, from: number, mean: number, leve
   let peak = from;
   for (let i = from; i < x.length; i += 1) {
     const [v, top] = [at(x, i) - mean, at(x, peak) - mean];
-    if (Math.sign(v) !== Math.sign(top)) {
-      if (Math.abs(top) > level) return peak;
+    if (sign(v) !== sign(top)) {
+      if (abs(top) > level) return peak;
       peak = i;
-    } else if (Math.abs(v) > Math.abs(top)) peak = i;
+    } else if (abs(v) > abs(top)) peak = i;
   }
   return peak;
 }
@@ -61,14 +64,14 @@ export function halfCycleAfter(x: Float64Array, from: number, mean: number, leve
  */
 export function periodAfter(x: Float64Array, from: number, mean: number, least: number): number | null {
   const crossings: number[] = [];
-  let sign = Math.sign(at(x, from) - mean);
+  let side = sign(at(x, from) - mean);
   let last = from;
   for (let i = from + 1; i < x.length && crossings.length < 4; i += 1) {
     const v = at(x, i) - mean;
-    if (!(Math.abs(v) > least)) continue;
-    if (Math.sign(v) !== sign) {
+    if (!(abs(v) > least)) continue;
+    if (sign(v) !== side) {
       crossings.push((last + i) / 2);
-      sign = Math.sign(v);
+      side = sign(v);
     }
     last = i;
   }
@@ -85,7 +88,7 @@ export function isClipped(x: Float64Array, mean: number, step: number, period: n
   const natural = (period / Math.PI) * Math.sqrt((2 * step) / top);
   let row = 0;
   for (let i = 0; i < x.length; i += 1) {
-    row = Math.abs(Math.abs(at(x, i) - mean) - top) < top * 1e-9 ? row + 1 : 0;
+    row = abs(abs(at(x, i) - mean) - top) < top * 1e-9 ? row + 1 : 0;
     if (row > Math.max(2, 2 * natural + 1)) return true;
   }
   return false;

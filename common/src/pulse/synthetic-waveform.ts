@@ -20,13 +20,16 @@ export interface WaveformSpec {
   readonly quantisation?: { readonly bits: number; readonly fullScale: number };
 }
 
+// Looked up once: under test runners the global object is slow, and these stand in the innermost loops.
+const { cos, exp, floor, imul, PI, round, sin } = Math;
+
 /** Sum of twelve uniforms less six: mean 0, standard deviation 1. */
 export function irwinHall(seed: number): () => number {
   let state = seed >>> 0;
   return () => {
     let sum = 0;
     for (let i = 0; i < 12; i += 1) {
-      state = (Math.imul(1664525, state) + 1013904223) >>> 0;
+      state = (imul(1664525, state) + 1013904223) >>> 0;
       sum += state / 4294967296;
     }
     return sum - 6;
@@ -35,9 +38,9 @@ export function irwinHall(seed: number): () => number {
 
 function wavelet(t: number, f: number, c: number, kind: 'burst' | 'damped'): number {
   if (t < 0) return 0;
-  if (kind === 'damped') return Math.sin(2 * Math.PI * f * t) * Math.exp((-t * f) / c) * (1 - Math.exp(-t * f * 2));
+  if (kind === 'damped') return sin(2 * PI * f * t) * exp((-t * f) / c) * (1 - exp(-t * f * 2));
   const T = c / f;
-  return t <= T ? Math.sin(2 * Math.PI * f * t) * 0.5 * (1 - Math.cos((2 * Math.PI * t) / T)) : 0;
+  return t <= T ? sin(2 * PI * f * t) * 0.5 * (1 - cos((2 * PI * t) / T)) : 0;
 }
 
 export function syntheticWaveform(spec: WaveformSpec): { time: Float64Array; amplitude: Float64Array } {
@@ -62,8 +65,8 @@ export function syntheticWaveform(spec: WaveformSpec): { time: Float64Array; amp
 }
 
 function roundHalfEven(x: number): number {
-  const floor = Math.floor(x);
-  const rest = x - floor;
-  if (rest !== 0.5) return Math.round(x);
-  return floor % 2 === 0 ? floor : floor + 1;
+  const below = floor(x);
+  const rest = x - below;
+  if (rest !== 0.5) return round(x);
+  return below % 2 === 0 ? below : below + 1;
 }

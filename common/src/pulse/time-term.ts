@@ -5,14 +5,12 @@
  * number of traces averages out: the shape of the onset (one input for all times picked on the same transducers, so that most
  * of it cancels between specimen and zero time), a half cycle that noise may hide, a person's eye.
  */
-import type { Wave } from '../contract/vocabulary';
 import { mean, standardDeviation } from '../statistics/descriptive';
 import type { Model, Term } from '../uncertainty/model';
 import type { WaveArrivals } from './arrivals';
 import { SHAPE } from './onset';
 
 export interface TimeReadings {
-  readonly wave: Wave;
   /** Stable, in front of the names of the inputs: `time.P`, `zero.S`. */
   readonly key: string;
   readonly label: string;
@@ -49,21 +47,21 @@ function scatter(model: Model, { key, label, values, picked }: TimeReadings): Te
   });
 }
 
-function onsetShape(model: Model, wave: Wave): Term {
+function onsetShape(model: Model): Term {
   return model.input({
-    key: `onset.${wave}`, label: `Shape of the onset of ${wave}`, unit: '1', value: SHAPE.value, standardUncertainty: SHAPE.halfWidth / Math.sqrt(3),
-    type: 'B', distribution: 'rectangular', degreesOfFreedom: Infinity, source: 'Growth of the onset as a power of time, 1 to 3',
+    key: 'onset', label: 'Shape of the onset', unit: '1', value: SHAPE.value, standardUncertainty: SHAPE.halfWidth / Math.sqrt(3),
+    type: 'B', distribution: 'rectangular', degreesOfFreedom: Infinity, source: 'The onset grows as a power of time, 1.5 to 3.5',
   });
 }
 
 export function timeTerm(model: Model, readings: TimeReadings): Term {
-  const { key, label, values, resolution, picked, wave } = readings;
+  const { key, label, values, resolution, picked } = readings;
   const parts: Term[] = [];
   const spread = scatter(model, readings);
   if (spread !== null) parts.push(spread);
   if (picked === null && resolution > 0) parts.push(within(model, `${key}.resolution`, `Resolution of ${label}`, resolution / 2, `Resolution ${Number((resolution * 1e6).toPrecision(3))} µs, δ/√12`));
   if (picked !== null) {
-    if (picked.latePerShape > 0) parts.push(onsetShape(model, wave).minus(SHAPE.value).times(-picked.latePerShape));
+    if (picked.latePerShape > 0) parts.push(onsetShape(model).minus(SHAPE.value).times(-picked.latePerShape));
     if (picked.hiddenHalfWidth > 0) parts.push(within(model, `${key}.hidden`, `Half cycle before ${label} hidden by noise`, picked.hiddenHalfWidth, 'First peak less than 25 times the noise: half a period'));
     if (picked.handHalfWidth > 0) parts.push(within(model, `${key}.hand`, `${label} set by hand`, picked.handHalfWidth, 'A tenth of a period (common practice)'));
   }

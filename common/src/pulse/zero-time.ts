@@ -44,7 +44,7 @@ export function zeroTerms(model: Model, wave: Wave, zero: ZeroTime | null, picke
   const typed = zero === null || zero.by === 'several lengths' ? [] : zero.readings;
   const values = isPicked ? picked.times : typed;
   if (values.length === 0) return null;
-  const read = timeTerm(model, { wave, key: `zero.${wave}`, label: `zero time of ${wave}`, values, resolution, picked: isPicked ? picked : null });
+  const read = timeTerm(model, { key: `zero.${wave}`, label: `zero time of ${wave}`, values, resolution, picked: isPicked ? picked : null });
   const known = zero?.by === 'reference bar' ? model.input({
     key: `zero.${wave}.bar`, label: `Known time of the reference bar, ${wave}`, unit: 's', value: zero.knownTime, standardUncertainty: zero.knownTimeUncertainty,
     type: 'B', distribution: 'normal', degreesOfFreedom: Infinity, source: 'Certificate of the reference bar',
