@@ -43,17 +43,26 @@ for (const colorScheme of ['light', 'dark'] as const) {
         }
         for (const path of OPENED[person] ?? []) {
           await page.goto(path);
-          await page.locator('.MuiDataGrid-row').first().click();
+          await page.locator('.MuiDataGrid-row[data-id]').first().click();
           await page.waitForURL((url) => url.pathname !== path);
           await check(page, page.url());
         }
       });
     }
 
+    test('a review', async ({ page }) => {
+      await signIn(page, 'reviewer');
+      await page.goto('/determinations?state=submitted');
+      await page.locator('.MuiDataGrid-row[data-id]').first().click();
+      await page.waitForURL(/\/reviews\//);
+      await page.getByRole('region', { name: 'Uncertainty budget' }).first().waitFor();
+      await check(page, 'review');
+    });
+
     test('a specimen’s run, and recording another', async ({ page }) => {
       await signIn(page, 'analyst');
       await page.goto('/specimens?sort=createdAt');
-      await page.locator('.MuiDataGrid-row').first().click();
+      await page.locator('.MuiDataGrid-row[data-id]').first().click();
       await page.waitForURL(/\/specimens\//);
       const specimen = page.url();
       await page.getByRole('region', { name: 'Runs' }).last().getByRole('link').first().click();

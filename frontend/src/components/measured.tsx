@@ -30,7 +30,7 @@ export function Measured({ constant }: { constant: ConstantResult | null }) {
   const { value, expandedUncertainty, unit, coverageFactor, degreesOfFreedom, interval } = constant;
   const low = formatMeasured(interval.low, expandedUncertainty, unit);
   const high = formatMeasured(interval.high, expandedUncertainty, unit);
-  const legend = `Expanded uncertainty, k = ${coverageFactor.toFixed(2)}, ν_eff = ${degreesOfFreedom === null ? '∞' : Math.floor(degreesOfFreedom)}, 95 %. Monte Carlo, shortest 95 %: ${low.value} to ${high.value} ${high.unit}. ${constant.origin}.`;
+  const legend = `Expanded uncertainty, k = ${coverageFactor.toFixed(2)}, ν_eff = ${degreesOfFreedom === null ? '∞' : Math.floor(degreesOfFreedom)}, 95 %. Monte Carlo, shortest 95 %: ${low.value} to ${high.value}${high.unit === '' ? '' : ` ${high.unit}`}. ${constant.origin === 'measured' ? 'Measured' : 'Derived'}.`;
   return <Statement value={value} U={expandedUncertainty} unit={unit} legend={legend} />;
 }
 
