@@ -12,6 +12,8 @@ import { hasFewDegreesOfFreedom, Sampler } from './sampling';
 
 const BATCH = 10_000;
 const PROBABILITY = 0.95;
+/** Settles the interval ends of an ordinary model to well within δ; beyond it a fit only takes longer. */
+const MOST_TRIALS = 400_000;
 
 export interface Propagated {
   readonly mean: number;
@@ -163,7 +165,7 @@ function correlationOf(outputs: readonly Float64Array[], summaries: readonly Pro
 export function propagateDistributions(outputs: readonly Term[], options: MonteCarloOptions): MonteCarlo {
   const model = outputs[0]?.model;
   if (model === undefined || outputs.length !== options.tolerances.length || outputs.some((o) => o.model !== model)) throw new RangeError('Give outputs of one model, each with a tolerance');
-  const maximum = Math.max(2, Math.floor((options.maximumTrials ?? 1_000_000) / BATCH));
+  const maximum = Math.max(2, Math.floor((options.maximumTrials ?? MOST_TRIALS) / BATCH));
   const inputs = model.inputs.map(() => new Float64Array(BATCH));
   const sampler = new Sampler(model, new RandomStream(options.seed), options.asNormal);
   const awaited = awaitedParts(model, options.asNormal ?? false);
