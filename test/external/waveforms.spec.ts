@@ -4,6 +4,7 @@
  * period, 20 and more within half a period or marked as uncertain.
  */
 import { arrivalsOf, shearGate } from '@strainwright/common/pulse/arrivals';
+import { LEAST_CONFIDENCE } from '@strainwright/common/pulse/pick-findings';
 import { pickArrival, type Picker } from '@strainwright/common/pulse/pick-arrival';
 import { syntheticWaveform, type WaveformSpec } from '@strainwright/common/pulse/synthetic-waveform';
 import type { Trace } from '@strainwright/common/pulse/trace';
@@ -53,7 +54,7 @@ describe.each<Picker>(['AIC', 'threshold'])('%s', (picker) => {
   it.each(['W02', 'W05'])('%s, signal to noise 20: within half a period, and marked as uncertain', (name) => {
     const { error, confidence } = errorOf(byName(name), picker);
     expect(Math.abs(error)).toBeLessThan(0.5);
-    expect(confidence).toBeLessThan(0.43);
+    expect(confidence).toBeLessThan(LEAST_CONFIDENCE);
   });
 });
 

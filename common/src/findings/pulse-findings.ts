@@ -15,7 +15,7 @@ export const PULSE_FINDINGS = catalogue({
   VELOCITY_OUTSIDE_CLASS: { severity: 'warn', why: 'A wrong unit of time or length, or a wrong arrival, spoils all four constants', action: 'Check the transit time, the length and their units, and the material class' },
   ARRIVAL_MISSING: { severity: 'stop', why: 'Without both arrivals there are no two velocities', action: 'Type the transit times, attach the waveform, or set the arrival by hand' },
   ARRIVAL_NOT_FOUND: { severity: 'stop', why: 'No onset stands out of the noise', action: 'Improve the coupling and record again, or set the arrival by hand with a reason' },
-  ARRIVAL_UNKNOWN_TRACE: { severity: 'stop', why: 'An arrival set by hand belongs to a trace that the run does not have', action: 'Set it again on a trace of this run, or take it out of the settings' },
+  ARRIVAL_UNKNOWN_TRACE: { severity: 'stop', why: 'An arrival set by hand belongs to one trace of the run, told by its heading', action: 'Set it again on a trace of this run, or take it out of the settings; give traces different headings' },
   ARRIVAL_UNCERTAIN: { severity: 'warn', why: 'The onset is slow or noisy, and an earlier half cycle may hide in the noise; half a period is in the budget', action: 'Look at the trace; average more shots or set the arrival by hand' },
   PICKERS_DISAGREE: { severity: 'warn', why: 'Two ways to find the arrival differ by more than a quarter of a period: a skipped cycle or a precursor', action: 'Look at the trace and set the arrival by hand' },
   ARRIVAL_BY_HAND: { severity: 'note', why: 'A person set this arrival; the reason stands with the settings', action: 'The reviewer looks at the trace' },

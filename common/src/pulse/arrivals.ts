@@ -71,8 +71,10 @@ export function arrivalsOf(waveforms: readonly Waveform[], search: ArrivalSearch
   const traces = waveforms.filter((w) => w.purpose === purpose).flatMap((w) => w.traces);
   // Arrivals are set by hand on the specimen's own traces, not on those of the zero time.
   const set = purpose === `waveform ${wave}` ? settings.arrivals.filter((a) => a.wave === wave) : [];
-  const stray = set.find((a) => !traces.some((t) => t.name === a.trace));
-  if (stray !== undefined) throw new EvaluationRefused([finding('ARRIVAL_UNKNOWN_TRACE', stray.trace, `No trace “${stray.trace}” of ${wave}`)]);
+  for (const { trace } of set) {
+    const count = traces.filter((t) => t.name === trace).length;
+    if (count !== 1) throw new EvaluationRefused([finding('ARRIVAL_UNKNOWN_TRACE', trace, `${count === 0 ? 'No' : count} traces of ${wave} are called “${trace}”`)]);
+  }
   if (traces.length === 0) return NONE;
   const findings: Finding[] = [];
   const arrivals = traces.map((trace): Arrival => {

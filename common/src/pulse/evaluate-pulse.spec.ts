@@ -198,6 +198,13 @@ describe('findings of a pulse run', () => {
     expect(refusalOf(input(change))).toContain(code);
   });
 
+  it('refuses an arrival by hand that could belong to either of two traces, and a trace of one sample', () => {
+    const alike = WAVEFORMS.map((w, i) => (i > 0 ? w : { ...w, traces: w.traces.map((t) => ({ ...t, name: 'CH1' })) }));
+    expect(refusalOf(input({ record: NOTHING_TYPED, run: { waveforms: alike }, settings: { arrivals: [{ wave: 'P', trace: 'CH1', time: 1e-5, reason: 'by eye' }] } }))).toEqual(['ARRIVAL_UNKNOWN_TRACE']);
+    const short = WAVEFORMS.map((w, i) => (i > 0 ? w : { ...w, traces: w.traces.map((t) => ({ ...t, time: t.time.slice(0, 1), amplitude: t.amplitude.slice(0, 1) })) }));
+    expect(refusalOf(input({ record: NOTHING_TYPED, run: { waveforms: short } }))).toEqual(['ARRIVAL_NOT_FOUND']);
+  });
+
   it('refuses a trace whose time runs backwards', () => {
     const back = WAVEFORMS.map((w, i) => (i > 0 ? w : { ...w, traces: w.traces.map((t) => ({ ...t, time: t.time.map((v, k) => (k === 700 ? v - 1e-6 : v)) })) }));
     expect(refusalOf(input({ record: NOTHING_TYPED, run: { waveforms: back } }))).toEqual(['TIME_NOT_MONOTONIC']);

@@ -4,7 +4,7 @@ import { finding } from '../findings/findings';
 import type { ArrivalPick } from './pick-arrival';
 
 /** Below this the budget holds half a period for a half cycle that may hide, or the pickers are far apart. */
-export const LEAST_CONFIDENCE = 0.43;
+export const LEAST_CONFIDENCE = 0.44;
 
 const us = (s: number) => `${(s * 1e6).toPrecision(3)} µs`;
 

@@ -26,9 +26,10 @@ export function samplingInterval({ time }: Trace): number {
 
 /**
  * Whether samples are missing: a step of time longer than one and a half intervals.
- * @throws EvaluationRefused where time does not increase
+ * @throws EvaluationRefused where time does not increase, or there are fewer than two samples
  */
 export function timeFindings(trace: Trace, subject: string): Finding[] {
+  if (trace.time.length < 2) throw new EvaluationRefused([finding('ARRIVAL_NOT_FOUND', subject, `${subject}: ${trace.time.length} samples`)]);
   const interval = samplingInterval(trace);
   let gap = -1;
   for (let i = 1; i < trace.time.length; i += 1) {
