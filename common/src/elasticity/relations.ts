@@ -1,5 +1,5 @@
 /**
- * Relations between the elastic constants of an isotropic solid: any two of E, ν, G, K, λ (Lamé) and M (P-wave modulus)
+ * Relations between the elastic constants of an isotropic solid. Any two of E, ν, G, K, λ (Lamé) and M (P-wave modulus)
  * give the other four. Moduli in one unit, ν dimensionless. Admissible (positive strain energy): E, G, K > 0 ⇔ −1 < ν < ½.
  * Source: standard results of linear isotropic elasticity, re-derived; checked on five materials in test/external.
  */
