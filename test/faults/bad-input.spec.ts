@@ -1,4 +1,5 @@
 /** Bad input of many kinds, at the door of the built program: each is refused clearly, at the right field, and nothing is half-saved. */
+import { readFileSync } from 'node:fs';
 import { deflateRawSync } from 'node:zlib';
 import type { Order } from '@strainwright/common/contract/orders';
 import type { Problem } from '@strainwright/common/contract/wire';
@@ -191,6 +192,8 @@ describe('bad input', () => {
     };
     const answer = await fetch(`${server.url}/api/specimens/${logged.specimenId}/runs`, init).then((r) => r.status, () => 'closed');
     expect([413, 'closed']).toContain(answer);
+    const peak = Number(/^VmHWM:\s+(\d+) kB/m.exec(readFileSync(`/proc/${server.process.pid}/status`, 'utf8'))?.[1]) / 1024;
+    expect(peak).toBeLessThan(900);
     expect((await new Client(server.url).raw('GET', '/api/health')).status).toBe(200);
   });
 });

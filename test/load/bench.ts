@@ -4,7 +4,7 @@ import { recordText } from '../faults/record-text';
 import type { Client } from '../services/client';
 import { cylinderReadings, fitEnded, logSpecimen, recordRun, setUpLaboratory, stressStrainRun, type Laboratory } from '../services/laboratory';
 import { removeFolder, temporaryFolder } from '../services/server';
-import { startObserved, type ObservedServer } from './observed-server';
+import { startIdle, startObserved, type ObservedServer } from './observed-server';
 
 const ROWS = [1_000, 100_000, 1_000_000];
 const REQUESTS = 200;
@@ -49,9 +49,11 @@ async function measureResponses(server: ObservedServer, lab: Laboratory, specime
   await fit(lab, runId);
   const paths = ['/api/orders', `/api/orders/${orderId}`, `/api/specimens/${specimenId}`, '/api/worklist', `/api/runs/${runId}`];
   await readPages(lab.analyst, paths, (asked) => asked < 50);
+  const idleProcess = await startIdle();
   await server.longestPause();
   const before = await readPages(lab.analyst, paths, (asked) => asked < REQUESTS / 2);
   const idlePause = await server.longestPause();
+  await idleProcess.longestPause();
 
   let fitting = true;
   const fits = (async () => {
@@ -61,6 +63,8 @@ async function measureResponses(server: ObservedServer, lab: Laboratory, specime
   const during = await readPages(lab.analyst, paths, () => fitting);
   await fits;
   const pause = await server.longestPause();
+  const machinePause = await idleProcess.longestPause();
+  idleProcess.stop();
   const after = await readPages(lab.analyst, paths, (asked) => asked < REQUESTS / 2);
 
   const idle = median([...before, ...after]);
@@ -69,6 +73,7 @@ async function measureResponses(server: ObservedServer, lab: Laboratory, specime
   tell('median answer during fits over idle', median(during) / idle, '', 2);
   tell('longest pause of the event loop, no fit', idlePause, 'ms');
   tell('longest pause of the event loop during fits', pause, 'ms', 50);
+  tell('longest pause of an idle process meanwhile (the machine’s)', machinePause, 'ms');
 }
 
 async function measureRecords(lab: Laboratory, specimenId: string): Promise<void> {

@@ -1,6 +1,7 @@
 import { execFile } from 'node:child_process';
 import { existsSync, mkdirSync, renameSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
+import { setImmediate } from 'node:timers/promises';
 import { promisify } from 'node:util';
 import type { PGlite } from '@electric-sql/pglite';
 import { Logger } from '@nestjs/common';
@@ -49,6 +50,7 @@ async function createInOwnProcess(folder: string): Promise<void> {
 export async function embedded(pglite: PGlite, afterClose: () => void = () => {}): Promise<Database> {
   const { drizzle } = await import('drizzle-orm/pglite');
   await pglite.exec(`set search_path to ${SEARCH_PATH}; set timezone to 'UTC'`);
+  letOthersIn(pglite);
   refuseDuringTransactions(pglite);
   return new Database('embedded', drizzle(pglite), new PglitePool(pglite), async () => {
     if (!pglite.closed) await pglite.close();
@@ -70,6 +72,24 @@ function refuseDuringTransactions(pglite: PGlite): void {
   pglite.exec = async (...args) => {
     check();
     return exec(...args);
+  };
+}
+
+/** A statement runs on this thread, and the next one would follow without a pause: other requests get their turn in between. */
+function letOthersIn(pglite: PGlite): void {
+  giveTurns(pglite);
+  const transaction = pglite.transaction.bind(pglite);
+  pglite.transaction = (work) => transaction((tx) => {
+    giveTurns(tx);
+    return work(tx);
+  });
+}
+
+function giveTurns(on: Pick<PGlite, 'query'>): void {
+  const query = on.query.bind(on);
+  on.query = async (...args) => {
+    await setImmediate();
+    return query(...args);
   };
 }
 
