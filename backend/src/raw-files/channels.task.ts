@@ -35,7 +35,7 @@ function series({ mapping, values }: ColumnValues, rows: Int32Array) {
   const known = unit(mapping.unit);
   const si = { length: 'm', time: 's', force: 'N', pressure: 'Pa', strain: '1' }[known?.dimension as string] ?? mapping.unit;
   return {
-    name: mapping.heading || mapping.channel, channel: mapping.channel, unit: si,
+    name: mapping.heading || `column ${mapping.column + 1}`, channel: mapping.channel, unit: si,
     values: Array.from(rows, (row) => {
       const value = (values[row] ?? Number.NaN) * mapping.sign;
       return Number.isFinite(value) ? (known === undefined ? value : toSI(value, known.symbol)) : null;
