@@ -34,7 +34,7 @@ export class RunsService {
       const at = this.clock.now();
       const order = await this.orderOf(tx, specimenId);
       const before = await answeredBefore(tx, { personId: by.id, key, nounId: specimenId, body: { run: body, files: received.map((f) => f.row.sha256) }, at });
-      if (before !== undefined) return this.recordedAt(tx, specimenId, before);
+      if (before !== undefined) return this.recordedAt(tx, specimenId, before, by);
       return this.insert(tx, { specimenId, body, received, by, at, orderId: order.id });
     });
     return this.one(id);
@@ -83,8 +83,9 @@ export class RunsService {
     return id;
   }
 
-  private async recordedAt(tx: Transaction, specimenId: string, at: Date): Promise<string> {
-    const [row] = await tx.select({ id: runs.id }).from(runs).where(and(eq(runs.specimenId, specimenId), eq(runs.createdAt, at)));
+  /** The run that the key was given for: made at that instant, by that person. */
+  private async recordedAt(tx: Transaction, specimenId: string, at: Date, by: Caller): Promise<string> {
+    const [row] = await tx.select({ id: runs.id }).from(runs).where(and(eq(runs.specimenId, specimenId), eq(runs.createdAt, at), eq(runs.performedById, by.id)));
     if (row === undefined) throw notFound('run');
     return row.id;
   }
