@@ -7,6 +7,8 @@ const node = (displayName, rootDir) => ({
 });
 
 export default {
+  // A slow machine is no fault of the code: only a test that hangs is.
+  testTimeout: 60_000,
   projects: [
     node('common', 'common'),
     node('backend', 'backend'),
