@@ -27,10 +27,17 @@ function waveformOf(file: FitFile, read: ReadColumns): Waveform {
   return { purpose: file.purpose, traces };
 }
 
+/** @throws TabularRefused when what could be read is the lesser part: it may be one end of the record only */
+function readable(file: FitFile, columns: ReadColumns): ReadColumns {
+  const [first] = columns.problems;
+  if (first !== undefined && columns.problemCount > columns.rows) throw new TabularRefused('rows-unreadable', `${file.name}, row ${first.row}: ${first.message}.`);
+  return columns;
+}
+
 async function evaluate(job: FitJob, seed: number, progress: (fraction: number) => void): Promise<FitResult> {
   const { shape, materialClass, readings, performedAt, instruments, record, settings, findings } = job;
   const read: { file: FitFile; columns: ReadColumns }[] = [];
-  for (const file of job.files) read.push({ file, columns: await columnsOf(job.cacheFolder, file, (fraction) => progress(0.4 * fraction)) });
+  for (const file of job.files) read.push({ file, columns: readable(file, await columnsOf(job.cacheFolder, file, (fraction) => progress(0.4 * fraction))) });
   const specimen = { shape, materialClass };
   const later = (fraction: number) => progress(0.4 + 0.6 * fraction);
   const skipped = read.filter((r) => r.columns.problemCount > 0).map(({ file, columns }) =>

@@ -12,7 +12,7 @@ export interface CachedFile {
   readonly layout: Layout;
 }
 
-const FORMAT = 1;
+const FORMAT = 2;
 const nameOf = (file: CachedFile) => createHash('sha256').update(JSON.stringify([FORMAT, file.sha256, file.layout])).digest('hex');
 
 function packed(columns: ReadColumns): Buffer {

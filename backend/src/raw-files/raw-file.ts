@@ -1,30 +1,17 @@
 /** A raw file on this machine: what it is, how it may be read, and its columns. Runs in worker threads; knows no database. */
 import { createReadStream } from 'node:fs';
-import { open, stat } from 'node:fs/promises';
+import { stat } from 'node:fs/promises';
 import type { Layout, LayoutProposal } from '@strainwright/common/contract/runs';
-import { detectEncoding, looksBinary } from '@strainwright/common/tabular/decode-text';
-import { proposeDelimitedLayout, proposeWorkbookLayout, type ProposalContext } from '@strainwright/common/tabular/propose-layout';
-import { ColumnReader, LineCutter, readDelimited, type ReadColumns } from '@strainwright/common/tabular/read-columns';
+import { looksBinary } from '@strainwright/common/tabular/decode-text';
+import { proposeDelimitedLayout, type ProposalContext } from '@strainwright/common/tabular/propose-layout';
+import { ColumnReader, readDelimited, type ReadColumns } from '@strainwright/common/tabular/read-columns';
 import { TabularRefused } from '@strainwright/common/tabular/tabular-refused';
-import { scanArchive, workbookRows } from './workbook';
+import { scanArchive } from './archive';
+import { countLines, sampleText } from './text-sample';
+import { workbookRows } from './workbook';
+import { proposeOfWorkbook } from './workbook-proposal';
 
-const HEAD = 512 * 1024;
-const HEAD_ROWS = 2000;
 const XLSX = 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet';
-
-async function headOf(path: string): Promise<{ head: Buffer; size: number }> {
-  const { size } = await stat(path);
-  const file = await open(path, 'r');
-  try {
-    const head = Buffer.alloc(Math.min(size, HEAD));
-    await file.read(head, 0, head.length, 0);
-    return { head, size };
-  } finally {
-    await file.close();
-  }
-}
-
-const isArchive = (head: Buffer) => head.length >= 4 && head.readUInt32LE(0) === 0x04034b50;
 
 export interface Inspection {
   mediaType: string;
@@ -33,44 +20,41 @@ export interface Inspection {
 
 /** Typed by content, never by name. @throws TabularRefused when it is no table */
 export async function inspectRawFile(path: string, context: ProposalContext): Promise<Inspection> {
-  const { head, size } = await headOf(path);
-  if (size === 0) throw new TabularRefused('file-empty');
-  if (isArchive(head)) return { mediaType: XLSX, proposal: await inspectWorkbook(path, size, context) };
-  if (looksBinary(head)) throw new TabularRefused('file-binary');
-  return { mediaType: 'text/plain', proposal: await inspectText(path, head, size, context) };
-}
-
-async function inspectText(path: string, head: Buffer, size: number, context: ProposalContext): Promise<LayoutProposal> {
-  const encoding = detectEncoding(head);
-  const lines: string[] = [];
-  const cutter = new LineCutter((line) => lines.push(line));
-  cutter.push(new TextDecoder(encoding).decode(head, { stream: true }));
-  if (size <= head.length) cutter.finish();
-  const proposal = proposeDelimitedLayout(lines.slice(0, HEAD_ROWS), encoding, lines.length, context);
-  const read = await readDelimited(createReadStream(path), proposal.layout);
-  return { ...proposal, rowCount: read.rows };
-}
-
-async function inspectWorkbook(path: string, size: number, context: ProposalContext): Promise<LayoutProposal> {
-  await scanArchive(path, size);
-  const rows: string[][] = [];
-  let sheet = '';
-  let count = 0;
-  for await (const row of workbookRows(path, '')) {
-    sheet = row.sheet;
-    count += 1;
-    if (rows.length < HEAD_ROWS) rows.push(row.cells);
+  const sample = await sampleText(path);
+  if (sample.size === 0) throw new TabularRefused('file-empty');
+  if (sample.isArchive) {
+    const names = await scanArchive(path, sample.size);
+    return { mediaType: XLSX, proposal: await proposeOfWorkbook(path, names, context) };
   }
-  const proposal = proposeWorkbookLayout(rows, sheet, count, context);
-  return { ...proposal, rowCount: count - proposal.layout.firstDataRow };
+  if (looksBinary(sample.head)) throw new TabularRefused('file-binary');
+  const proposal = proposeDelimitedLayout(sample.lines(), sample.later(), sample.encoding, 0, context);
+  return { mediaType: 'text/plain', proposal: await counted(path, proposal) };
+}
+
+/** The proposal of a text with the rows that it reads counted, and those that it cannot read said. */
+async function counted(path: string, proposal: LayoutProposal): Promise<LayoutProposal> {
+  const { layout } = proposal;
+  if (layout.columns.every((c) => c.channel === 'ignore')) return { ...proposal, rowCount: Math.max(0, (await countLines(path, layout.encoding)) - layout.firstDataRow) };
+  const read = await readRawFile(path, layout);
+  const [first] = read.problems;
+  if (first === undefined) return { ...proposal, rowCount: read.rows };
+  const remark = `${read.problemCount} ${read.problemCount === 1 ? 'row' : 'rows'} could not be read; row ${first.row}: ${first.message}.`;
+  const few = read.problemCount * 100 <= read.rows;
+  return { ...proposal, rowCount: read.rows, confidence: Math.min(proposal.confidence, few ? 1 : 0.5), remarks: [...proposal.remarks, remark] };
 }
 
 /** Every mapped column of the file. @throws TabularRefused */
 export async function readRawFile(path: string, layout: Layout, onProgress: (fraction: number) => void = () => undefined): Promise<ReadColumns> {
   const { size } = await stat(path);
   if (layout.format === 'delimited') return readDelimited(createReadStream(path, { highWaterMark: 1 << 20 }), layout, (bytes) => onProgress(bytes / size));
-  await scanArchive(path, size);
+  const names = await scanArchive(path, size);
   const reader = new ColumnReader(layout);
-  for await (const { cells } of workbookRows(path, layout.sheet)) reader.pushCells(cells);
+  let read: string | null = null;
+  // A layout without a sheet's name reads the first.
+  const wanted = (sheet: string) => (layout.sheet === '' ? read === null : sheet === layout.sheet);
+  for await (const { sheet, cells } of workbookRows(path, names, wanted)) {
+    read = sheet;
+    reader.pushCells(cells);
+  }
   return reader.finish();
 }

@@ -1,33 +1,11 @@
-import { Readable } from 'node:stream';
+/** Rows of a workbook as text, streamed. */
+import { EventEmitter } from 'node:events';
 import { createReadStream } from 'node:fs';
-import { promisify } from 'node:util';
 import { TabularRefused } from '@strainwright/common/tabular/tabular-refused';
-import type { ZipFile, Entry } from 'yauzl';
 
-const LARGEST_UNPACKED = 1024 ** 3;
-const LARGEST_RATIO = 100;
-const RATIO_COUNTS_FROM = 10 * 1024 ** 2;
-const MOST_ENTRIES = 1000;
-
-/** Reads an archive's directory before anything is unpacked. @throws TabularRefused for an archive bomb or a broken archive */
-export async function scanArchive(path: string, size: number): Promise<void> {
-  const { open } = await import('yauzl');
-  const archive = await (promisify(open) as (path: string, options: object) => Promise<ZipFile>)(path, { lazyEntries: true }).catch(() => {
-    throw new TabularRefused('workbook-broken');
-  });
-  let unpacked = 0;
-  let entries = 0;
-  await new Promise<void>((resolve, reject) => {
-    archive.on('entry', (entry: Entry) => {
-      entries += 1;
-      unpacked += entry.uncompressedSize;
-      if (entries > MOST_ENTRIES || unpacked > LARGEST_UNPACKED || (unpacked > RATIO_COUNTS_FROM && unpacked > LARGEST_RATIO * size)) reject(new TabularRefused('archive-too-large'));
-      else archive.readEntry();
-    });
-    archive.on('end', resolve);
-    archive.on('error', () => reject(new TabularRefused('workbook-broken')));
-    archive.readEntry();
-  }).finally(() => archive.close());
+export interface SheetRow {
+  readonly sheet: string;
+  readonly cells: string[];
 }
 
 function cellText(value: unknown): string {
@@ -44,30 +22,33 @@ function cellText(value: unknown): string {
 }
 
 /**
- * Rows of a workbook's sheet as text, streamed: numbers with a point, row positions kept (empty rows come as empty).
- * @param sheet its name; `` takes the first sheet that has rows
+ * Rows of a workbook: numbers with a point, times of day as time stamps, row positions kept (empty rows come as empty).
+ * @param wanted whether the rows of a sheet are wanted, asked once for each
+ * @param names of sheets by the number of their part: the reader itself learns them too late in some workbooks
  * @throws TabularRefused when the workbook cannot be read
  */
-export async function* workbookRows(path: string, sheet: string): AsyncGenerator<{ sheet: string; cells: string[] }> {
+export async function* workbookRows(path: string, names: ReadonlyMap<string, string>, wanted: (sheet: string) => boolean): AsyncGenerator<SheetRow> {
   const { default: excel } = await import('exceljs');
-  const source: Readable = createReadStream(path);
+  const source = createReadStream(path);
   try {
-    const reader = new excel.stream.xlsx.WorkbookReader(source, { sharedStrings: 'cache', hyperlinks: 'ignore', styles: 'ignore', worksheets: 'emit', entries: 'emit' });
+    const reader = new excel.stream.xlsx.WorkbookReader(source, { sharedStrings: 'cache', hyperlinks: 'ignore', styles: 'cache', worksheets: 'emit', entries: 'emit' });
+    // The reader renumbers sheets that it knows by name: the number of the part comes with the event just before.
+    let part = '';
+    if (reader instanceof EventEmitter) {
+      reader.on('entry', (entry: { type: string; id?: string }) => {
+        if (entry.type === 'worksheet') part = entry.id ?? '';
+      });
+    }
     for await (const worksheet of reader) {
-      // The reader knows a sheet by its name once the workbook part was read; before that by its number.
-      const name = 'name' in worksheet && typeof worksheet.name === 'string' ? worksheet.name : '';
-      if (sheet !== '' && name !== sheet) continue;
+      const sheet = names.get(part) ?? `sheet${part}`;
+      // A sheet that is passed over is still taken to its end by the reader, which then clears away what it unpacked.
+      if (!wanted(sheet)) continue;
       let last = 0;
       for await (const row of worksheet) {
-        while (last + 1 < row.number) {
-          last += 1;
-          yield { sheet: name, cells: [] };
-        }
+        for (; last + 1 < row.number; last += 1) yield { sheet, cells: [] };
         last = row.number;
-        const values = Array.isArray(row.values) ? row.values.slice(1) : [];
-        yield { sheet: name, cells: Array.from(values, cellText) };
+        yield { sheet, cells: Array.from(Array.isArray(row.values) ? row.values.slice(1) : [], cellText) };
       }
-      if (last > 0) return;
     }
   } catch (error) {
     if (error instanceof TabularRefused) throw error;

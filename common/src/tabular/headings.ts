@@ -27,7 +27,8 @@ export function unitCell(text: string): string | null {
   return unit(bare) === undefined ? null : bare;
 }
 
-/** What tells one layout of headings from another, so that a confirmed one is remembered for its instrument. */
-export function layoutSignature(format: string, headings: readonly string[]): string {
-  return `${format}|${headings.map((h) => h.trim().toLowerCase().replace(/\s+/g, ' ')).join('|')}`;
+/** What tells one layout of headings and units from another, so that a confirmed one is remembered for its instrument. */
+export function layoutSignature(format: string, headings: readonly string[], units: readonly string[]): string {
+  const plain = (cells: readonly string[]) => cells.map((c) => c.trim().toLowerCase().replace(/\s+/g, ' ')).join('|');
+  return units.length === 0 ? `${format}|${plain(headings)}` : `${format}|${plain(headings)}|${plain(units)}`;
 }

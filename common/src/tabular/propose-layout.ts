@@ -1,17 +1,21 @@
 /**
- * Proposes how to read a raw file from its first rows: delimiter and decimal sign by which of them makes the most rows of
- * numbers, then heading, units and first data row, then columns to channels. What is doubtful is said, never guessed silently.
+ * Proposes how to read a raw file from its first rows and rows sampled further on: delimiter and decimal sign, then heading, units
+ * and first data row, then columns to channels. What is doubtful is said, never guessed silently.
  */
-import type { Layout, LayoutProposal } from '../contract/runs';
-import { mapColumns, type ColumnText } from './channels-of-columns';
+import type { ColumnMapping, Layout, LayoutProposal } from '../contract/runs';
+import { mapColumns, type MappedColumns } from './channels-of-columns';
+import { columnTexts } from './column-text';
 import type { Encoding } from './decode-text';
-import { layoutSignature, splitHeading, unitCell } from './headings';
-import { cellNumber, cellValue, clockSeconds, type DecimalSign } from './numbers';
-import { splitLine, type Delimiter } from './split-line';
+import { decimalOf, dialectOf, filledCells, firstDataRow, isDataRow, rowsOf, usualWidth, type Dialect, type Row } from './dialect';
+import { Doubts } from './doubts';
+import { headingRowsAbove, type HeadingRows } from './heading-rows';
+import { roleOfHeading } from './heading-words';
+import { layoutSignature, splitHeading } from './headings';
+import { cellValue, couldBeThousands, hasThousandsSeparators } from './numbers';
 import { TabularRefused } from './tabular-refused';
 
 const FIRST_ROWS = 40;
-const DELIMITERS: readonly Delimiter[] = ['\t', ';', ',', '|', ' '];
+const MOST_COLUMNS = 64;
 
 export interface ProposalContext {
   /** True for a pulse waveform. */
@@ -20,149 +24,117 @@ export interface ProposalContext {
   readonly remembered?: ReadonlyMap<string, Layout>;
 }
 
-const isNumber = (cell: string, decimal: DecimalSign) => !Number.isNaN(cellValue(cell, decimal));
-
-/** A row of data: at least two numbers, and numbers in most of its cells. */
-function isDataRow(cells: readonly string[], decimal: DecimalSign): boolean {
-  let numbers = 0;
-  let filled = 0;
-  for (const cell of cells) {
-    if (cell.trim() === '') continue;
-    filled += 1;
-    if (isNumber(cell, decimal)) numbers += 1;
-  }
-  return numbers >= 2 && numbers >= filled - 1;
+interface Table {
+  readonly rows: readonly Row[];
+  /** Rows sampled further on in the file. */
+  readonly later: readonly Row[];
+  readonly first: number;
+  readonly width: number;
+  readonly heads: HeadingRows;
 }
 
-function modalWidth(rows: readonly (readonly string[])[]): number {
-  const counts = new Map<number, number>();
-  for (const row of rows) counts.set(row.length, (counts.get(row.length) ?? 0) + 1);
-  return [...counts.entries()].sort((a, b) => b[1] - a[1])[0]?.[0] ?? 0;
+/** @throws TabularRefused when there are no rows of numbers */
+function tableOf(rows: readonly Row[], later: readonly Row[], { decimal }: Dialect): Table {
+  const width = usualWidth([...rows, ...later].filter((row) => isDataRow(row, decimal)));
+  const first = firstDataRow(rows, decimal, width);
+  if (first < 0) throw new TabularRefused(isOneColumn(rows) ? 'one-column' : 'no-numbers');
+  if (width > MOST_COLUMNS) throw new TabularRefused('too-many-columns');
+  return { rows, later, first, width, heads: headingRowsAbove(rows, first, width) };
 }
 
-interface Dialect {
-  readonly delimiter: Delimiter;
-  readonly decimal: DecimalSign;
-  readonly rows: readonly (readonly string[])[];
-  readonly score: number;
+function isOneColumn(rows: readonly Row[]): boolean {
+  const cells = rows.map(filledCells).filter((row) => row.length > 0);
+  const numbers = cells.filter((row) => row.length === 1 && row.some((c) => !Number.isNaN(cellValue(c, '.')) || !Number.isNaN(cellValue(c, ','))));
+  return numbers.length >= 3 && numbers.length * 2 > cells.length;
 }
 
-function dialectOf(lines: readonly string[]): Dialect {
-  let best: Dialect = { delimiter: ',', decimal: '.', rows: lines.map((l) => [l]), score: 0 };
-  for (const delimiter of DELIMITERS) {
-    const rows = lines.map((line) => splitLine(line, delimiter));
-    for (const decimal of ['.', ','] as const) {
-      if (decimal === delimiter) continue;
-      const data = rows.filter((row) => isDataRow(row, decimal));
-      const width = modalWidth(data);
-      const score = data.filter((row) => row.length === width).length;
-      if (score > best.score) best = { delimiter, decimal, rows, score };
-    }
-  }
-  return best;
+const rowAt = (rows: readonly Row[], index: number | null): Row => (index === null ? [] : (rows[index] ?? []));
+const dataOf = ({ rows, later, first }: Table) => [...rows.slice(first), ...later];
+
+/** Refuses numbers that could not be told from others. @throws TabularRefused */
+function refuseUnreadableNumbers(table: Table, { delimiter }: Dialect, format: Layout['format']): void {
+  const data = dataOf(table).filter((row) => row.length === table.width);
+  const grouped = data.flatMap((row) => [...row]).find(hasThousandsSeparators);
+  if (grouped !== undefined) throw new TabularRefused('thousands-separators', `The first is “${grouped.trim()}”.`);
+  const whole = data.every((row) => row.every((c) => /^\s*[+-]?\d*\s*$/.test(c)));
+  if (format !== 'delimited' || delimiter !== ',' || !whole) return;
+  const above = table.rows.slice(0, table.first).map(filledCells).filter((row) => row.length > 0).pop() ?? [];
+  if (above.length === 1 && above.some((c) => roleOfHeading(splitHeading(c).name) !== null)) throw new TabularRefused('one-column');
+  if (above.length > 1 && above.length < table.width) throw new TabularRefused('commas-both-ways');
 }
 
-/** First of two data rows in a row, of the usual width. */
-function firstDataRow(rows: readonly (readonly string[])[], decimal: DecimalSign, width: number): number {
-  const fits = (i: number) => {
-    const row = rows[i];
-    return row !== undefined && row.length >= width - 1 && isDataRow(row, decimal);
-  };
-  for (let i = 0; i < rows.length; i += 1) if (fits(i) && (fits(i + 1) || i + 1 >= rows.length)) return i;
-  return -1;
+/** Decimals of exactly three digits everywhere could be thousands. */
+function doubtDecimals(table: Table, { delimiter, decimal }: Dialect, doubts: Doubts): void {
+  if (delimiter === ',' && decimal === '.') return;
+  const cells = dataOf(table).flatMap((row) => row.filter((c) => c.includes(decimal) && !Number.isNaN(cellValue(c, decimal))));
+  const [example] = cells;
+  if (example === undefined || !cells.every(couldBeThousands)) return;
+  doubts.say(0.5, `Numbers such as ${example.trim()} could be thousands: ${decimal === ',' ? 'a decimal comma' : 'a decimal point'} is proposed; please check.`);
 }
 
-const filledCells = (row: readonly string[] | undefined) => (row ?? []).filter((c) => c.trim() !== '');
-
-/** Rows just above the data: units where most cells are units, headings above them. */
-function headingRows(rows: readonly (readonly string[])[], first: number, width: number): { headingRow: number | null; unitsRow: number | null } {
-  const above: number[] = [];
-  for (let i = first - 1; i >= 0 && above.length < 2; i -= 1) {
-    const filled = filledCells(rows[i]).length;
-    if (filled === 0) continue;
-    if (filled < Math.max(2, Math.ceil(width / 2)) || (rows[i]?.length ?? 0) > width + 1) break;
-    above.push(i);
-  }
-  const [nearest, next] = above;
-  if (nearest === undefined) return { headingRow: null, unitsRow: null };
-  const cells = filledCells(rows[nearest]);
-  const units = cells.filter((c) => unitCell(c) !== null).length;
-  if (next !== undefined && units >= cells.length - 1 && units > 0) return { headingRow: next, unitsRow: nearest };
-  return { headingRow: nearest, unitsRow: null };
-}
-
-function columnTexts(rows: readonly (readonly string[])[], first: number, width: number, heads: { headingRow: number | null; unitsRow: number | null }, decimal: DecimalSign): ColumnText[] {
-  const headings = heads.headingRow === null ? [] : (rows[heads.headingRow] ?? []);
-  const units = heads.unitsRow === null ? [] : (rows[heads.unitsRow] ?? []);
-  const data = rows.slice(first).filter((row) => isDataRow(row, decimal));
-  return Array.from({ length: width }, (_, i) => {
-    const { name, unitText } = splitHeading(headings[i] ?? '');
-    const cells = data.map((row) => row[i] ?? '');
-    const isClock = cells.length > 0 && cells.every((c) => Number.isNaN(cellNumber(c, decimal)) && !Number.isNaN(clockSeconds(c)));
-    return { heading: name, unitText: unitCell(units[i] ?? '') || unitText, values: cells.map((c) => cellValue(c, decimal)), isClock };
-  });
-}
-
-interface Source {
+interface Source extends Dialect {
   readonly format: Layout['format'];
   readonly encoding: Encoding;
-  readonly delimiter: Delimiter;
-  readonly decimal: DecimalSign;
   readonly sheet: string;
   readonly rowCount: number;
 }
 
-function propose(rows: readonly (readonly string[])[], source: Source, context: ProposalContext): LayoutProposal {
-  const data = rows.filter((row) => isDataRow(row, source.decimal));
-  const width = modalWidth(data);
-  const first = firstDataRow(rows, source.decimal, width);
-  if (first < 0) throw new TabularRefused(rows.some((row) => row.some((c) => isNumber(c, source.decimal))) && rows.every((row) => filledCells(row).length <= 1) ? 'one-column' : 'no-numbers');
-  if (width > 64) throw new TabularRefused('too-many-columns');
-  const heads = headingRows(rows, first, width);
-  const columns = columnTexts(rows, first, width, heads, source.decimal);
-  const mapped = mapColumns(columns, context.waveform);
-  const headings = heads.headingRow === null ? [] : (rows[heads.headingRow] ?? []);
-  const signature = layoutSignature(source.format, headings);
-  const remarks = [...mapped.remarks];
-  let { confidence } = mapped;
-  if (heads.headingRow === null) {
-    confidence = Math.min(confidence, 0.4);
-    remarks.unshift('The file has no headings: the channels are proposed from the numbers alone.');
-  }
+/** Confirmed columns, with what has changed since said. */
+function recalled(before: readonly ColumnMapping[], now: readonly ColumnMapping[]): MappedColumns {
+  const doubts = new Doubts();
+  doubts.say(1, 'This layout was confirmed before for this instrument.');
+  const turned = before.filter((b, i) => b.channel !== 'ignore' && now[i]?.channel === b.channel && now[i]?.sign !== b.sign);
+  if (turned.length > 0) doubts.say(0.5, `${turned.map((c) => c.heading || c.channel).join(', ')} ${turned.length === 1 ? 'runs' : 'run'} the other way than when it was confirmed; please check the signs.`);
+  return { columns: [...before], confidence: doubts.confidence, remarks: doubts.remarks };
+}
+
+function proposalOf(table: Table, source: Source, context: ProposalContext): LayoutProposal {
+  const { rows, first, width, heads } = table;
+  const doubts = new Doubts();
+  doubtDecimals(table, source, doubts);
+  if (heads.headingRow === null) doubts.say(0.4, 'The file has no headings: the channels are proposed from the numbers alone.');
+  const headings = rowAt(rows, heads.headingRow);
+  const units = rowAt(rows, heads.unitsRow);
+  const mapped = mapColumns(columnTexts(headings, units, dataOf(table), width, source.decimal), context.waveform);
   const layout: Layout = {
     format: source.format, encoding: source.encoding, delimiter: source.delimiter, decimal: source.decimal, sheet: source.sheet,
     ...heads, firstDataRow: first, columns: mapped.columns,
   };
-  const remembered = heads.headingRow === null ? undefined : context.remembered?.get(signature);
   const firstRows = rows.slice(0, Math.max(FIRST_ROWS, first + 12)).map((row) => row.map((c) => c.slice(0, 200)));
-  if (remembered !== undefined && remembered.columns.length === layout.columns.length) {
-    return { layout: { ...layout, columns: remembered.columns }, origin: 'remembered', confidence: 1, remarks: ['This layout was confirmed before for this instrument.'], firstRows, rowCount: source.rowCount };
+  const remembered = heads.headingRow === null ? undefined : context.remembered?.get(layoutSignature(source.format, headings, units));
+  const rest = { firstRows, rowCount: source.rowCount };
+  if (remembered !== undefined && remembered.columns.length === width) {
+    const known = recalled(remembered.columns, mapped.columns);
+    return { layout: { ...layout, columns: known.columns }, origin: 'remembered', confidence: known.confidence, remarks: known.remarks, ...rest };
   }
-  return { layout, origin: 'proposed', confidence, remarks, firstRows, rowCount: source.rowCount };
+  return { layout, origin: 'proposed', confidence: Math.min(doubts.confidence, mapped.confidence), remarks: [...doubts.remarks, ...mapped.remarks], ...rest };
 }
 
 /**
  * @param lines the first lines of the text, whole lines only
+ * @param later lines sampled further on, so that signs and sizes are those of the whole test
  * @param rowCount rows of the whole file where known, else those of `lines`
  * @throws TabularRefused when there is no table of numbers
  */
-export function proposeDelimitedLayout(lines: readonly string[], encoding: Encoding, rowCount: number, context: ProposalContext): LayoutProposal {
+export function proposeDelimitedLayout(lines: readonly string[], later: readonly string[], encoding: Encoding, rowCount: number, context: ProposalContext): LayoutProposal {
   if (lines.every((line) => line.trim() === '')) throw new TabularRefused('file-empty');
-  const dialect = dialectOf(lines);
-  if (dialect.score === 0) {
-    const numbers = lines.filter((l) => !Number.isNaN(cellValue(l, '.')) || !Number.isNaN(cellValue(l, ','))).length;
-    throw new TabularRefused(numbers >= 3 ? 'one-column' : 'no-numbers');
-  }
-  return propose(dialect.rows, { format: 'delimited', encoding, delimiter: dialect.delimiter, decimal: dialect.decimal, sheet: '', rowCount }, context);
+  const dialect = dialectOf([...lines, ...later]);
+  if (dialect === null) throw new TabularRefused(isOneColumn(lines.map((line) => [line])) ? 'one-column' : 'no-numbers');
+  const table = tableOf(rowsOf(lines, dialect), rowsOf(later, dialect), dialect);
+  refuseUnreadableNumbers(table, dialect, 'delimited');
+  return proposalOf(table, { format: 'delimited', encoding, ...dialect, sheet: '', rowCount }, context);
 }
 
-/** @param rows the first rows of a sheet as text, numbers written with a point */
-export function proposeWorkbookLayout(rows: readonly (readonly string[])[], sheet: string, rowCount: number, context: ProposalContext): LayoutProposal {
-  if (rows.length === 0) throw new TabularRefused('file-empty');
-  return propose(rows, { format: 'workbook', encoding: 'utf-8', delimiter: ',', decimal: '.', sheet, rowCount }, context);
+/** @param rows the first rows of a sheet as text @param later rows sampled further on */
+export function proposeWorkbookLayout(rows: readonly Row[], later: readonly Row[], sheet: string, rowCount: number, context: ProposalContext): LayoutProposal {
+  if (rows.every((row) => filledCells(row).length === 0)) throw new TabularRefused('file-empty');
+  const dialect: Dialect = { delimiter: ',', decimal: decimalOf([...rows, ...later]) };
+  const table = tableOf(rows, later, dialect);
+  refuseUnreadableNumbers(table, dialect, 'workbook');
+  return proposalOf(table, { format: 'workbook', encoding: 'utf-8', ...dialect, sheet, rowCount }, context);
 }
 
-/** The signature of a confirmed layout, by the headings that it names. */
-export function signatureOf(layout: Layout, firstRows: readonly (readonly string[])[]): string | null {
-  return layout.headingRow === null ? null : layoutSignature(layout.format, firstRows[layout.headingRow] ?? []);
+/** The signature of a confirmed layout, by the headings and units that it names. */
+export function signatureOf(layout: Layout, firstRows: readonly Row[]): string | null {
+  return layout.headingRow === null ? null : layoutSignature(layout.format, rowAt(firstRows, layout.headingRow), rowAt(firstRows, layout.unitsRow));
 }

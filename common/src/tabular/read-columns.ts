@@ -22,6 +22,9 @@ export interface ReadColumns {
 const NAMED_PROBLEMS = 20;
 const LONGEST_LINE = 100_000;
 const DAY = 86_400;
+/** What loggers write for a reading that they do not have. */
+const NO_VALUE = /^(nan|[+-]?inf(inity)?|n\/?a|null|none|over(flow|range|load)?|ovf|ol|err(or)?|-{1,3}|[*?]+|#\S+)$/i;
+const WORD = /\p{L}{2}/u;
 
 class Growing {
   private values = new Float64Array(1024);
@@ -79,9 +82,15 @@ export class ColumnReader {
       if (Number.isNaN(value)) bad = i;
       else numbers += 1;
     }
-    if (numbers === 0) this.skipped += 1;
+    if (numbers === 0 && !this.isSpoiltData(cells)) this.skipped += 1;
     else if (bad >= 0) this.name(bad, cells);
     else this.keep(cells);
+  }
+
+  /** A row of data in which no number can be read, told from headings, footers and blank rows by having no words. */
+  private isSpoiltData(cells: readonly string[]): boolean {
+    const mapped = this.mappings.map(({ column }) => (cells[column] ?? '').trim()).filter((cell) => cell !== '');
+    return mapped.length > 0 && mapped.every((cell) => NO_VALUE.test(cell) || (/\d/.test(cell) && !WORD.test(cell)));
   }
 
   private keep(cells: readonly string[]): void {

@@ -22,3 +22,14 @@ export function splitLine(line: string, delimiter: Delimiter): string[] {
   cells.push(cell);
   return cells;
 }
+
+/** Headings that end in a bracketed unit each. */
+const BRACKETED = /[^([{]+[([{][^)\]}]*[)\]}]/g;
+
+/** A line of headings above a table parted by blanks, whose headings hold blanks themselves: at two blanks or more, or after each bracketed unit, where that gives the width. */
+export function splitHeadingLine(line: string, width: number): string[] {
+  const apart = line.trim().split(/\s{2,}/);
+  if (apart.length === width) return apart;
+  const bracketed = (line.match(BRACKETED) ?? []).map((h) => h.trim());
+  return bracketed.length === width ? bracketed : splitLine(line, ' ');
+}
