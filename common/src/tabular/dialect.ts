@@ -15,16 +15,13 @@ export interface Dialect {
 const isFilled = (cell: string) => cell.trim() !== '';
 export const filledCells = (row: Row | undefined): string[] => (row ?? []).filter(isFilled);
 
-/** Numbers and time stamps among the filled cells of a row, 0 to 1; 0 for a row with fewer than two. */
+/** Cells that hold a number or a time stamp. */
+const numbersIn = (row: Row, decimal: DecimalSign) => row.reduce((n, cell) => (isFilled(cell) && !Number.isNaN(cellValue(cell, decimal)) ? n + 1 : n), 0);
+
+/** Numbers among the filled cells of a row, 0 to 1; 0 for a row with fewer than two. */
 function numericShare(row: Row, decimal: DecimalSign): number {
-  let numbers = 0;
-  let filled = 0;
-  for (const cell of row) {
-    if (!isFilled(cell)) continue;
-    filled += 1;
-    if (!Number.isNaN(cellValue(cell, decimal))) numbers += 1;
-  }
-  return numbers < 2 ? 0 : numbers / filled;
+  const numbers = numbersIn(row, decimal);
+  return numbers < 2 ? 0 : numbers / filledCells(row).length;
 }
 
 /** A row of data: at least two numbers, and numbers in at least half of its cells (dates and states stand beside them). */
@@ -32,12 +29,14 @@ export function isDataRow(row: Row, decimal: DecimalSign): boolean {
   return numericShare(row, decimal) >= 0.5;
 }
 
-/** The width that most rows have. */
-export function usualWidth(rows: readonly Row[]): number {
+function mostFrequent(values: readonly number[]): number {
   const counts = new Map<number, number>();
-  for (const row of rows) counts.set(row.length, (counts.get(row.length) ?? 0) + 1);
+  for (const value of values) counts.set(value, (counts.get(value) ?? 0) + 1);
   return [...counts.entries()].sort((a, b) => b[1] - a[1])[0]?.[0] ?? 0;
 }
+
+/** The width that most rows have. */
+export const usualWidth = (rows: readonly Row[]): number => mostFrequent(rows.map((row) => row.length));
 
 /** How many cells of the rows of usual width are numbers, counted in rows. A wrong dialect splits numbers or leaves cells that are none. */
 function score(rows: readonly Row[], decimal: DecimalSign): number {
@@ -76,11 +75,12 @@ export function rowsOf(lines: readonly string[], { delimiter, decimal }: Dialect
   return rows.map((row, i) => (i < first ? splitHeadingLine(lines[i] ?? '', width) : row));
 }
 
-/** First of two data rows in a row, of the usual width; −1 when there is none. */
+/** First of two data rows in a row, of the usual width and with about the usual count of numbers; −1 when there is none. */
 export function firstDataRow(rows: readonly Row[], decimal: DecimalSign, width: number): number {
+  const usual = mostFrequent(rows.filter((row) => row.length === width && isDataRow(row, decimal)).map((row) => numbersIn(row, decimal)));
   const fits = (i: number) => {
     const row = rows[i];
-    return row !== undefined && row.length >= width - 1 && isDataRow(row, decimal);
+    return row !== undefined && row.length >= width - 1 && isDataRow(row, decimal) && numbersIn(row, decimal) >= usual - 1;
   };
   for (let i = 0; i < rows.length; i += 1) if (fits(i) && (fits(i + 1) || i + 1 >= rows.length)) return i;
   return -1;

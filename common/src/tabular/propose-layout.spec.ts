@@ -102,6 +102,13 @@ describe('headings and units', () => {
     expect(mapped(proposal)).toEqual(MAPPED);
   });
 
+  it('skips numbered lines of header that have half as many numbers as the data', () => {
+    const head = [...Array.from({ length: 20 }, (_, i) => `Parameter ${i} : ${i + 7}`), 'Time(s) Load(kN) Axial(µε) Lateral(µε)'];
+    const proposal = propose(head, (i) => cells(i, ' '));
+    expect(proposal.layout).toMatchObject({ headingRow: 20, firstDataRow: 21 });
+    expect(mapped(proposal)).toEqual(MAPPED);
+  });
+
   it('asks when there are no headings', () => {
     const proposal = propose([], (i) => cells(i, ';'));
     expect(proposal.layout.headingRow).toBeNull();
