@@ -108,6 +108,8 @@ const runCases: Case[] = [
   { what: 'a file whose numbers are all NaN', send: fileRun('nan.csv', `time (s),force (kN),strain (%)\n${'NaN,NaN,NaN\n'.repeat(50)}`), status: 422, field: 'files.0' },
   { what: 'a file of letters where numbers belong', send: fileRun('letters.csv', `time (s),force (kN),strain (%)\n${'1.O,2l.5,O.3\n'.repeat(50)}`), status: 422, field: 'files.0' },
   { what: 'a file of headings only', send: fileRun('headings.csv', 'time,force,strain\ns,kN,%\n'), status: 422, field: 'files.0' },
+  { what: 'a file with thousands separators', send: fileRun('thousands.csv', `Load (N);Strain (%)\n${Array.from({ length: 50 }, (_, i) => `${i};${i}.5`).join('\n')}\n1,234.5;51.5\n`), status: 422, field: 'files.0' },
+  { what: 'a file whose commas part columns and decimals', send: fileRun('commas.csv', `Time (s),Load (kN),Strain (%)\n${Array.from({ length: 50 }, (_, i) => `${i},5,${i},25,0,${i}`).join('\n')}\n`), status: 422, field: 'files.0' },
   { what: 'prose', send: fileRun('letter.txt', 'Dear laboratory,\nplease find no data here.\n'), status: 422, field: 'files.0' },
   { what: 'a zip bomb called XLSX', send: fileRun('bomb.xlsx', zipBomb(deflateRawSync)), status: [413, 422], field: 'files.0' },
   { what: 'a broken workbook', send: fileRun('broken.xlsx', new Uint8Array([0x50, 0x4b, 3, 4, 1, 2, 3, 4, 5, 6, 7, 8, 9])), status: 422, field: 'files.0' },

@@ -69,7 +69,7 @@ function doubtDecimals(table: Table, { delimiter, decimal }: Dialect, doubts: Do
   const cells = dataOf(table).flatMap((row) => row.filter((c) => c.includes(decimal) && !Number.isNaN(cellValue(c, decimal))));
   const [example] = cells;
   if (example === undefined || !cells.every(couldBeThousands)) return;
-  doubts.say(0.5, `Numbers such as ${example.trim()} could be thousands: ${decimal === ',' ? 'a decimal comma' : 'a decimal point'} is proposed; please check.`);
+  doubts.say(0.5, `Numbers such as ${example.trim()} could be thousands: ${decimal === ',' ? 'a decimal comma' : 'a decimal point'} is taken. If they are thousands, export the file without separators.`);
 }
 
 interface Source extends Dialect {

@@ -13,10 +13,13 @@ import { PlainTable } from '../../components/table';
 
 const NAMES: Readonly<Record<Channel, string>> = { time: 'time', force: 'force', stress: 'stress', axial1: 'axial 1', axial2: 'axial 2', transverse1: 'transverse 1', transverse2: 'transverse 2', trace: 'trace', ignore: 'not used' };
 const UNITS: Readonly<Record<Channel, readonly string[]>> = {
-  time: ['s', 'ms', 'µs', 'ns', 'min'], force: ['N', 'kN', 'MN', 'lbf', 'kip'], stress: ['Pa', 'kPa', 'MPa', 'GPa', 'psi', 'ksi'],
+  time: ['s', 'ms', 'µs', 'ns', 'min'], force: ['N', 'daN', 'kN', 'MN', 'kgf', 'lbf', 'kip'], stress: ['Pa', 'kPa', 'MPa', 'GPa', 'bar', 'psi', 'ksi'],
   axial1: ['mm/mm', '%', '‰', 'µε', 'mm', 'µm', 'in'], axial2: ['mm/mm', '%', '‰', 'µε', 'mm', 'µm', 'in'], transverse1: ['mm/mm', '%', '‰', 'µε', 'mm', 'µm', 'in'], transverse2: ['mm/mm', '%', '‰', 'µε', 'mm', 'µm', 'in'],
   trace: ['V', 'mV', ''], ignore: [],
 };
+
+/** Confidence under which a proposal is a question. */
+const ASKS_UNDER = 0.6;
 
 export function LayoutSection({ run, file }: { run: Run; file: RunFile }) {
   const mayConfirm = useMay('runs.record') && run.state === 'recorded';
@@ -25,7 +28,7 @@ export function LayoutSection({ run, file }: { run: Run; file: RunFile }) {
     <Section title={`${file.purpose}: ${file.name}`} action={<><Button onClick={() => void download(`/api/runs/${run.id}/files/${file.id}/content`, file.name)}>Raw file</Button><Button onClick={() => setOpen(!open)} aria-expanded={open}>{open ? 'Hide the layout' : 'Layout'}</Button></>}>
       <Typography color="textSecondary">{file.rowCount.toLocaleString('en-GB')} rows, {fileSize(file.size)}. SHA-256 <span className="mono" style={{ overflowWrap: 'anywhere' }}>{file.sha256}</span></Typography>
       <Typography>{file.layoutOrigin === 'confirmed' ? `Layout confirmed by ${file.confirmedBy ?? 'a person'}.` : file.layoutOrigin === 'remembered' ? 'Layout remembered from an earlier file of this instrument.' : 'Layout proposed by the program; nobody has confirmed it yet.'}</Typography>
-      {file.remarks.length > 0 && file.layoutOrigin !== 'confirmed' && <Alert severity="info" sx={{ my: 1 }}>{file.remarks.join(' ')}</Alert>}
+      {file.remarks.length > 0 && file.layoutOrigin !== 'confirmed' && <Alert severity={file.confidence < ASKS_UNDER ? 'warning' : 'info'} sx={{ my: 1 }}>{file.confidence < ASKS_UNDER && 'The program is not sure of this layout. '}{file.remarks.join(' ')}</Alert>}
       {open && <LayoutEditor run={run} file={file} mayConfirm={mayConfirm} />}
     </Section>
   );
@@ -45,7 +48,7 @@ function LayoutEditor({ run, file, mayConfirm }: { run: Run; file: RunFile; mayC
         { title: 'Unit', cell: (c) => c.channel === 'ignore' ? '' : <TextField select label={`Unit of column ${c.column + 1}`} value={c.unit} disabled={!mayConfirm} onChange={(e) => change(c.column, { unit: e.target.value })} sx={{ minWidth: 110 }}>{[...new Set([c.unit, ...UNITS[c.channel]])].map((u) => <MenuItem key={u} value={u}>{u === '' ? 'none' : u}</MenuItem>)}</TextField> },
         { title: 'Sign', cell: (c) => c.channel === 'ignore' ? '' : <TextField select label={`Sign of column ${c.column + 1}`} value={String(c.sign)} disabled={!mayConfirm} onChange={(e) => change(c.column, { sign: e.target.value === '-1' ? -1 : 1 })} sx={{ minWidth: 120 }}><MenuItem value="1">as it is</MenuItem><MenuItem value="-1">turned</MenuItem></TextField> },
       ]} />
-      <Typography variant="caption" color="textSecondary">Signs so that stress and axial strain grow on loading. Data from row {layout.firstDataRow + 1}; delimiter {layout.delimiter === '\t' ? 'tab' : layout.delimiter === ' ' ? 'blank' : `“${layout.delimiter}”`}, decimal “{layout.decimal}”, {layout.encoding}.</Typography>
+      <Typography variant="caption" color="textSecondary">Signs so that stress and axial strain grow on loading. Data from row {layout.firstDataRow + 1}; {layout.format === 'workbook' ? `sheet “${layout.sheet}”` : `delimiter ${layout.delimiter === '\t' ? 'tab' : layout.delimiter === ' ' ? 'blank' : `“${layout.delimiter}”`}, decimal “${layout.decimal}”, ${layout.encoding}`}.</Typography>
       <Loaded query={preview}>{(p) => (
         <Box tabIndex={0} role="region" aria-label="First rows" sx={{ overflow: 'auto', maxHeight: 280, border: '1px solid', borderColor: 'divider' }}>
           <Box component="table" className="mono" sx={{ fontSize: 12, borderCollapse: 'collapse', '& td': { px: 1, borderBottom: '1px solid', borderColor: 'divider', whiteSpace: 'nowrap' } }}>
